@@ -1,0 +1,156 @@
+package org.meltbook.measure;
+
+import java.util.ArrayList;
+import java.util.List;
+import org.meltbook.base.Doubles;
+import org.meltbook.base.NumberText;
+import org.meltbook.base.RangeException;
+import org.meltbook.base.Rows;
+import org.meltbook.figure.Figure;
+import org.meltbook.units.Quantity;
+
+/**
+ * Storage and loss modulus over angular frequency in small-amplitude oscillation. The two moduli may have frequencies
+ * of their own, as when they were read off a printed figure; nothing is interpolated to bring them together.
+ */
+public final class FrequencySweep implements Measurement {
+    private final Conditions conditions;
+    private final Curve storage;
+    private final Curve loss;
+    private final List<Note> trail;
+
+    private FrequencySweep(Conditions conditions, Curve storage, Curve loss, List<Note> trail) {
+        this.conditions = conditions;
+        this.storage = storage;
+        this.loss = loss;
+        this.trail = List.copyOf(trail);
+    }
+
+    /**
+     * A sweep from its two curves.
+     *
+     * @param storage storage modulus in Pa over angular frequency in rad/s
+     * @param loss    loss modulus in Pa over angular frequency in rad/s
+     * @throws RangeException if a curve holds another quantity
+     */
+    public static FrequencySweep of(Conditions conditions, Curve storage, Curve loss, List<Note> trail) {
+        check(storage, Quantity.STORAGE_MODULUS);
+        check(loss, Quantity.LOSS_MODULUS);
+        return new FrequencySweep(conditions, storage, loss, trail);
+    }
+
+    private static void check(Curve curve, Quantity y) {
+        if (curve.x().quantity() != Quantity.ANGULAR_FREQUENCY || curve.y().quantity() != y) {
+            throw new RangeException("a frequency sweep needs " + y.label() + " over angular frequency, found "
+                    + curve.y().quantity().label() + " over " + curve.x().quantity().label());
+        }
+    }
+
+    @Override
+    public String kind() {
+        return "frequency sweep";
+    }
+
+    @Override
+    public Conditions conditions() {
+        return conditions;
+    }
+
+    /** Storage modulus in Pa over angular frequency in rad/s. */
+    public Curve storage() {
+        return storage;
+    }
+
+    /** Loss modulus in Pa over angular frequency in rad/s. */
+    public Curve loss() {
+        return loss;
+    }
+
+    @Override
+    public List<Curve> curves() {
+        return List.of(storage, loss);
+    }
+
+    @Override
+    public List<Note> trail() {
+        return trail;
+    }
+
+    /** Whether both moduli were measured at the same frequencies. */
+    public boolean sharesFrequencies() {
+        return storage.x().values().equals(loss.x().values());
+    }
+
+    /** The same sweep with one more note. */
+    public FrequencySweep noted(Note note) {
+        List<Note> longer = new ArrayList<>(trail);
+        longer.add(note);
+        return new FrequencySweep(conditions, storage, loss, longer);
+    }
+
+    @Override
+    public String headline() {
+        return "Frequency sweep" + (conditions.sample().isEmpty() ? "" : " of " + conditions.sample()) + ": "
+                + storage.size() + " storage and " + loss.size() + " loss moduli, "
+                + (sharesFrequencies() ? "at common frequencies" : "at frequencies of their own") + ", "
+                + NumberText.of(lowest()) + " to " + NumberText.of(highest()) + " rad/s"
+                + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";
+    }
+
+    private double lowest() {
+        return Math.min(storage.x().values().smallest(), loss.x().values().smallest());
+    }
+
+    private double highest() {
+        return Math.max(storage.x().values().largest(), loss.x().values().largest());
+    }
+
+    @Override
+    public List<Rows> rows() {
+        if (sharesFrequencies()) {
+            Rows.Builder together = Rows.titled(title())
+                    .numbers("ω", "rad/s", storage.x().values())
+                    .numbers("G′", "Pa", storage.y().values())
+                    .numbers("G″", "Pa", loss.y().values());
+            return List.of(Trail.verdicts(together, storage, loss).build());
+        }
+        return List.of(Trail.rows(title() + ", storage modulus", storage), Trail.rows(title() + ", loss modulus", loss));
+    }
+
+    private String title() {
+        return conditions.sample().isEmpty() ? "frequency sweep" : conditions.sample();
+    }
+
+    @Override
+    public List<Figure> figures() {
+        Curve usableStorage = storage.usable();
+        Curve usableLoss = loss.usable();
+        Figure.Builder figure = Figure.titled("Moduli of " + title())
+                .x(Quantity.ANGULAR_FREQUENCY)
+                .y(new org.meltbook.figure.Axis("moduli G′, G″", "Pa", org.meltbook.figure.Axis.Scale.LOG))
+                .marks("G′", usableStorage.x().values(), usableStorage.y().values())
+                .marks("G″", usableLoss.x().values(), usableLoss.y().values());
+        Trail.marksSetAside(figure, curves());
+        return List.of(figure.build());
+    }
+
+    @Override
+    public List<String> cautions() {
+        return Trail.cautions(curves());
+    }
+
+    /** The angular frequencies at which anything usable was measured, in rad/s, rising. */
+    public Doubles frequencies() {
+        return Doubles.of(java.util.stream.DoubleStream.concat(
+                        storage.usable().x().values().stream(),
+                        loss.usable().x().values().stream())
+                .distinct()
+                .sorted()
+                .toArray());
+    }
+
+    @Override
+    public String toString() {
+        return headline();
+    }
+}

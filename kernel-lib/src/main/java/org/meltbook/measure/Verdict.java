@@ -1,0 +1,37 @@
+package org.meltbook.measure;
+
+/**
+ * What a row is worth, and why.
+ *
+ * @param standing sound, doubtful or unusable
+ * @param reason   why, with the number behind it; empty for a sound row
+ */
+public record Verdict(Standing standing, String reason) {
+    /** The three things that can be said of a row. */
+    public enum Standing {
+        /** Nothing speaks against it. */
+        SOUND,
+        /** Used, but something speaks against it. */
+        DOUBTFUL,
+        /** Kept and shown, never used in a fit. */
+        UNUSABLE
+    }
+
+    /** A row against which nothing is known. */
+    public static final Verdict SOUND = new Verdict(Standing.SOUND, "");
+
+    /** A row that is used with a doubt. */
+    public static Verdict doubtful(String reason) {
+        return new Verdict(Standing.DOUBTFUL, reason);
+    }
+
+    /** A row that no fit uses. */
+    public static Verdict unusable(String reason) {
+        return new Verdict(Standing.UNUSABLE, reason);
+    }
+
+    /** Whether a fit may use the row. */
+    public boolean usable() {
+        return standing != Standing.UNUSABLE;
+    }
+}

@@ -1,0 +1,9 @@
+/**
+ * Typed, immutable measurements: {@link org.meltbook.measure.Series} of numbers in SI under
+ * {@link org.meltbook.measure.Conditions}, a {@link org.meltbook.measure.Verdict} a row, and a trail of
+ * {@link org.meltbook.measure.Note}s of what was done. Rows are never dropped.
+ *
+ * <p>May use: {@code base}, {@code units}, {@code figure}. Example: {@code sweep.storage().x().toArray()} gives the
+ * frequencies of the storage modulus in rad/s.
+ */
+package org.meltbook.measure;

@@ -1,0 +1,6 @@
+/**
+ * Where kernel and library meet: the facade for cells, renderers, the headless runner, the command line.
+ *
+ * <p>May use: everything.
+ */
+package org.meltbook.notebook;
