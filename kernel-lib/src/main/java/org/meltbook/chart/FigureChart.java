@@ -24,7 +24,7 @@ final class FigureChart extends XYChart {
     private static final double SMALLEST_TITLE = 11;
     private static final double AXIS_TITLE_SIZE = 13.5;
     private static final double LABEL_SIZE = 12;
-    private static final int PADDING = 16;
+    private static final int PADDING = 14;
 
     private final List<EdgeMark> edgeMarks;
     private final List<String> remarks;
@@ -34,7 +34,7 @@ final class FigureChart extends XYChart {
     FigureChart(Placement placement) {
         super(WIDTH, HEIGHT);
         this.edgeMarks = List.copyOf(placement.edgeMarks());
-        this.remarks = placement.tracks().isEmpty() && edgeMarks.isEmpty() ? placement.remarks() : List.of();
+        this.remarks = placement.tracks().isEmpty() ? placement.remarks() : List.of();
         this.plot = new FigurePlot(this, axes, placement.bars());
         this.legend = underPlot;
         style(placement);
@@ -79,7 +79,7 @@ final class FigureChart extends XYChart {
         styler.setChartFontColor(Palette.INK);
         styler.setChartTitleFontColor(Palette.INK);
         styler.setChartTitleBoxVisible(false);
-        styler.setChartTitlePadding(4);
+        styler.setChartTitlePadding(8);
         styler.setChartPadding(PADDING);
         styler.setPlotBorderVisible(false);
         styler.setPlotGridLinesVisible(false);

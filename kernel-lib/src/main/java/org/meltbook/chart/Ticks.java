@@ -17,8 +17,11 @@ final class Ticks {
     private static final double ROOM = 1.35;
 
     private static final int MOST = 11;
+    private static final int MOST_STEPS = 8;
     private static final double[] ONE = {1};
     private static final double[] ONE_TWO_FIVE = {1, 2, 5};
+    private static final double[] ONE_TWO_THREE_FIVE = {1, 2, 3, 5};
+    private static final double[] MANY = {1, 2, 3, 4, 5, 6, 8};
     private static final double[] ALL = {1, 2, 3, 4, 5, 6, 7, 8, 9};
 
     private final Scale scale;
@@ -41,12 +44,12 @@ final class Ticks {
     }
 
     private List<Tick> logarithmic() {
-        double decades = Math.log10(scale.max() / scale.min());
-        boolean moderate = scale.min() > 0.9e-3 && scale.max() < 1.1e4;
+        double decades = scale.decades();
+        boolean moderate = scale.min() > 0.9e-3 && scale.max() < 1.2e5;
         boolean plain = moderate && decades <= 3.2;
         for (double[] multiples : candidates(decades, plain)) {
             List<Tick> labelled = multiples(multiples, 1, plain);
-            if (labelled.size() >= (multiples == ALL ? 3 : 2) && fit(labelled)) {
+            if (labelled.size() >= (multiples.length > 3 ? 3 : 2) && fit(labelled)) {
                 return withMinor(labelled, ALL, 1);
             }
         }
@@ -62,7 +65,7 @@ final class Ticks {
 
     private static List<double[]> candidates(double decades, boolean plain) {
         if (decades < 0.75) {
-            return List.of(ALL, ONE_TWO_FIVE);
+            return List.of(ALL, MANY, ONE_TWO_THREE_FIVE, ONE_TWO_FIVE);
         }
         if (decades < 2.3) {
             return plain ? List.of(ONE_TWO_FIVE, ONE) : List.of(ONE, ONE_TWO_FIVE);
@@ -102,7 +105,7 @@ final class Ticks {
         int[] growth = {2, 5, 10};
         BigDecimal base = step;
         List<Tick> labelled = steps(base, true);
-        for (int i = 0; labelled.size() > MOST || !fit(labelled); i++) {
+        for (int i = 0; labelled.size() > MOST_STEPS || !fit(labelled); i++) {
             base = step.multiply(BigDecimal.valueOf(growth[i % 3])).movePointRight(i / 3);
             labelled = steps(base, true);
         }
