@@ -11,10 +11,10 @@ import org.knowm.xchart.style.Styler.LegendPosition;
 import org.knowm.xchart.style.XYStyler;
 
 /**
- * A chart of the chart library in our theme. The library keeps the series and their styles, knows where each number lies,
- * and draws markers, lines and bands. What it cannot do is drawn here: exact ticks with decade labels, minor ticks, a grid
- * at labelled ticks only, error bars with two lengths, dashes along a curve, signs at the edge, and a legend of several
- * columns below the picture.
+ * A chart of the chart library in our theme. The library keeps the series and their styles, knows where each number
+ * lies, and draws markers, lines and bands. What it cannot do is drawn here: exact ticks with decade labels, minor
+ * ticks, a grid at labelled ticks only, error bars with two lengths, dashes along a curve, signs at the edge, and a
+ * legend of several columns below the picture.
  */
 final class FigureChart extends XYChart {
     static final int WIDTH = 720;

@@ -51,7 +51,7 @@ final class FigurePlot extends Plot_XY<XYStyler, XYSeries> {
         chart.paintFront(g, getBounds());
     }
 
-    /** The library draws a line point by point, so that dashes begin anew at each point; dashed lines are drawn here. */
+    /** The library draws a line point by point, so that dashes begin anew at each point; they are drawn here. */
     private void paintInOrder(Graphics2D g, List<XYSeries> enabled) {
         List<XYSeries> run = new ArrayList<>();
         for (XYSeries series : enabled) {

@@ -24,7 +24,8 @@ final class Mark extends Marker {
     }
 
     private static final BasicStroke OUTLINE = new BasicStroke(0.9f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
-    private static final BasicStroke OPEN_OUTLINE = new BasicStroke(1.4f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
+    private static final BasicStroke OPEN_OUTLINE =
+            new BasicStroke(1.4f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
 
     private final Form kind;
     private final boolean filled;

@@ -233,7 +233,8 @@ final class Placement {
             if (cut) {
                 tally.bandValuesCut++;
             }
-            boolean seen = !gap && shown(px, x) && (shown(low[i], y) || shown(high[i], y));
+            boolean outside = !shown(low[i], y) && !shown(high[i], y) && within(low[i]) == within(high[i]);
+            boolean seen = !gap && shown(px, x) && !outside;
             low[i] = seen ? within(low[i]) : Double.NaN;
             high[i] = seen ? within(high[i]) : Double.NaN;
         }

@@ -23,8 +23,8 @@ import javax.imageio.stream.ImageOutputStream;
 import org.knowm.xchart.internal.chartpart.IChart;
 
 /**
- * Charts as PNG pictures, opaque and without metadata. A picture of few colours, as charts are, is written with a palette
- * of 256, which halves it; rare tones at the edges of letters and curves become the nearest of these.
+ * Charts as PNG pictures, opaque and without metadata. A picture of few colours, as charts are, is written with a
+ * palette of 256, which halves it; rare tones at the edges of letters and curves become the nearest of these.
  */
 public final class Png {
     /** Pixels of the picture for each pixel of the chart: a page on a fine screen or on paper stays sharp. */

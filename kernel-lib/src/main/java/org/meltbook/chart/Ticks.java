@@ -9,8 +9,8 @@ import java.util.function.ToDoubleFunction;
 
 /**
  * Chooses the ticks of an axis and writes their numbers. A logarithmic axis over some decades is labelled at decades,
- * as 10ⁿ or, within three decades of moderate numbers, as plain numbers; over less than that at 1, 2, 5 or finer, so that
- * it is never left without numbers.
+ * as 10ⁿ or, within three decades of moderate numbers, as plain numbers; over less than that at 1, 2, 5 or finer, so
+ * that it is never left without numbers.
  */
 final class Ticks {
     /** Labels are nearer to each other than this many of their own extents only if that cannot be avoided. */
@@ -23,6 +23,7 @@ final class Ticks {
     private static final double[] ONE_TWO_THREE_FIVE = {1, 2, 3, 5};
     private static final double[] MANY = {1, 2, 3, 4, 5, 6, 8};
     private static final double[] ALL = {1, 2, 3, 4, 5, 6, 7, 8, 9};
+    private static final double[] HALVES = {1, 1.5, 2, 2.5, 3, 3.5, 4, 4.5, 5, 5.5, 6, 6.5, 7, 7.5, 8, 8.5, 9, 9.5};
 
     private final Scale scale;
     private final double length;
@@ -50,7 +51,7 @@ final class Ticks {
         for (double[] multiples : candidates(decades, plain)) {
             List<Tick> labelled = multiples(multiples, 1, plain);
             if (labelled.size() >= (multiples.length > 3 ? 3 : 2) && fit(labelled)) {
-                return withMinor(labelled, ALL, 1);
+                return withMinor(labelled, multiples.length > 4 ? HALVES : ALL, 1);
             }
         }
         if (decades < 2) {
@@ -137,9 +138,9 @@ final class Ticks {
             return "0";
         }
         if (order < -3 || order > 5) {
-            int digits = Math.max(0, order(value) - order(step));
-            BigDecimal mantissa = value.movePointLeft(order(value)).setScale(digits, RoundingMode.HALF_EVEN);
-            return minus(mantissa.toPlainString()) + "×10" + raised(order(value));
+            int digits = Math.max(0, order - order(step));
+            BigDecimal mantissa = value.movePointLeft(order).setScale(digits, RoundingMode.HALF_EVEN);
+            return minus(mantissa.toPlainString()) + "×10" + raised(order);
         }
         return minus(value.setScale(Math.max(0, -order(step)), RoundingMode.HALF_EVEN).toPlainString());
     }
@@ -156,7 +157,8 @@ final class Ticks {
         for (int i = 1; i < ticks.size(); i++) {
             double gap = length
                     * (scale.fraction(ticks.get(i).value()) - scale.fraction(ticks.get(i - 1).value()));
-            double extents = extent.applyAsDouble(ticks.get(i).label()) + extent.applyAsDouble(ticks.get(i - 1).label());
+            double extents =
+                    extent.applyAsDouble(ticks.get(i).label()) + extent.applyAsDouble(ticks.get(i - 1).label());
             if (gap < ROOM * extents / 2) {
                 return false;
             }

@@ -44,8 +44,8 @@ class ChartFontTest {
     }
 
     /**
-     * A second Java in which the fontconfig library cannot be loaded (an empty file stands in its place) and which finds
-     * no configuration either.
+     * A second Java in which the fontconfig library cannot be loaded (an empty file stands in its place) and which
+     * finds no configuration either.
      */
     @Test
     void without_fontconfig_the_picture_is_the_same(@TempDir Path folder) throws Exception {

@@ -167,6 +167,18 @@ class DrawingTest {
     }
 
     @Test
+    void a_band_without_any_bound_fills_the_height() {
+        double inf = Double.POSITIVE_INFINITY;
+        Figure figure = Samples.loglog()
+                .band("interval", Doubles.of(1, 2, 4), Doubles.of(0, 0, 0), Doubles.of(inf, inf, inf))
+                .build();
+        Canvas canvas = Canvas.of(figure);
+        assertEquals("3 places of bands reach beyond the axes and are cut there.", Drawing.of(figure).caption());
+        assertFalse(canvas.pixel(canvas.x(2.2), canvas.bottom() - 8) == 0xFFFFFFFF);
+        assertFalse(canvas.pixel(canvas.x(2.2), canvas.top() + 8) == 0xFFFFFFFF);
+    }
+
+    @Test
     void dashes_run_on_along_a_line_of_many_points() {
         Doubles x = Doubles.logSpaced(1, 100, 400);
         Canvas canvas = Canvas.of(Samples.loglog()
@@ -322,7 +334,7 @@ class DrawingTest {
             return image.getRGB((int) (Png.SCALE * x), (int) (Png.SCALE * y));
         }
 
-        /** Whether a pixel within six of the place has the colour. */
+        /** Whether a pixel within three CSS pixels of the place has the colour. */
         boolean colourNear(double x, double y, int colour) {
             for (double dx = -3; dx <= 3; dx += 0.5) {
                 for (double dy = -3; dy <= 3; dy += 0.5) {
