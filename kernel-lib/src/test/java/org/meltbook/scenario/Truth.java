@@ -1,0 +1,214 @@
+package org.meltbook.scenario;
+
+import com.google.gson.Gson;
+import java.io.IOException;
+import java.io.InputStreamReader;
+import java.io.Reader;
+import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
+import java.util.List;
+import java.util.Objects;
+
+/**
+ * What the invented melts really are: the content of {@code truth.json}, in SI units.
+ *
+ * @param seed      the number from which all noise of the scenario follows
+ * @param resin     linear spectrum of the virgin resin at the reference temperature
+ * @param nonlinear what large strains do to each mode
+ * @param shift     how temperature moves times and moduli
+ * @param chalk     the filler
+ * @param scission  how breaking chains shorten the times
+ * @param noise     how far readings scatter about the truth
+ * @param lots      the lots
+ */
+record Truth(
+        long seed, Resin resin, Nonlinear nonlinear, Shift shift, Chalk chalk, Scission scission, Noise noise,
+        List<Lot> lots) {
+
+    /**
+     * One log-normal peak of a relaxation spectrum.
+     *
+     * @param strength sum of its moduli in Pa
+     * @param centre   median relaxation time in s
+     * @param width    standard deviation of ln(time)
+     */
+    record Peak(double strength, double centre, double width) {
+        /** Modulus in Pa of the peak between {@code time·exp(±step/2)}, time in s, by its value at the middle. */
+        double modulus(double time, double step) {
+            double z = StrictMath.log(time / centre) / width;
+            return strength * step / (width * StrictMath.sqrt(2 * StrictMath.PI)) * StrictMath.exp(-z * z / 2);
+        }
+
+        /** The peak with its strength and its centre multiplied by the given factors. */
+        Peak times(double strengthFactor, double centreFactor) {
+            return new Peak(strength * strengthFactor, centre * centreFactor, width);
+        }
+    }
+
+    /** Two peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale. */
+    record Resin(double shortestTime, double longestTime, int modes, Peak backbone, Peak branches) {
+        /** Distance of neighbouring times in ln(time). */
+        double step() {
+            return StrictMath.log(longestTime / shortestTime) / (modes - 1);
+        }
+
+        /** Relaxation time in s of the given mode, counted from zero. */
+        double time(int mode) {
+            return shortestTime * StrictMath.exp(mode * step());
+        }
+    }
+
+    /**
+     * Damping exponent n and ratio ψ = −N2/N1 of a mode; both go from a fast to a slow value as the relaxation time
+     * passes the turnover time: {@code n(λ) = fast + (slow − fast) λ/(λ + turnover)}.
+     */
+    record Nonlinear(
+            double fastDamping, double slowDamping, double fastSecondNormal, double slowSecondNormal,
+            double turnoverTime) {
+        /** Damping exponent, no unit, of the mode with relaxation time {@code time} in s at the reference temperature. */
+        double damping(double time) {
+            return fastDamping + (slowDamping - fastDamping) * time / (time + turnoverTime);
+        }
+
+        /** −N2/N1, no unit, of the mode with relaxation time {@code time} in s at the reference temperature. */
+        double secondNormal(double time) {
+            return fastSecondNormal + (slowSecondNormal - fastSecondNormal) * time / (time + turnoverTime);
+        }
+    }
+
+    /**
+     * Arrhenius shift of the times, and moduli in proportion to density times temperature.
+     *
+     * @param referenceTemperature in K
+     * @param activationEnergy     in J/mol
+     * @param meltDensity          density of the unfilled melt in kg/m³ at the reference temperature
+     * @param densitySlope         its change in kg/(m³ K)
+     */
+    record Shift(double referenceTemperature, double activationEnergy, double meltDensity, double densitySlope) {
+        private static final double GAS_CONSTANT = 8.31446261815324;
+
+        /** Factor on the relaxation times at {@code kelvin}. */
+        double time(double kelvin) {
+            return StrictMath.exp(activationEnergy / GAS_CONSTANT * (1 / kelvin - 1 / referenceTemperature));
+        }
+
+        /** Factor on the moduli at {@code kelvin}. */
+        double modulus(double kelvin) {
+            double density = meltDensity + densitySlope * (kelvin - referenceTemperature);
+            return density * kelvin / (meltDensity * referenceTemperature);
+        }
+
+        /** Factor on the rate of a reaction with activation energy {@code energy} in J/mol at {@code kelvin}. */
+        double reaction(double energy, double kelvin) {
+            return StrictMath.exp(-energy / GAS_CONSTANT * (1 / kelvin - 1 / referenceTemperature));
+        }
+    }
+
+    /** Density in kg/m³, intrinsic viscosity and maximum packing of the filler. */
+    record Chalk(double density, double intrinsicViscosity, double maximumPacking) {
+        /** Volume fraction of a mass fraction in a melt of density {@code melt} in kg/m³. */
+        double volumeFraction(double massFraction, double melt) {
+            double filler = massFraction / density;
+            return filler / (filler + (1 - massFraction) / melt);
+        }
+
+        /** Factor on the linear moduli at a volume fraction, by Krieger and Dougherty. */
+        double onModuli(double volumeFraction) {
+            return StrictMath.pow(1 - volumeFraction / maximumPacking, -intrinsicViscosity * maximumPacking);
+        }
+
+        /** How much faster than the whole the melt between the grains is strained: root of (factor on moduli)/(1 − φ). */
+        double onStrain(double volumeFraction) {
+            return StrictMath.sqrt(onModuli(volumeFraction) / (1 - volumeFraction));
+        }
+    }
+
+    /** Times go with molar mass to the power {@code viscosityExponent}; the activation energy in J/mol is that of breaking. */
+    record Scission(double viscosityExponent, double activationEnergy) {}
+
+    /** Standard deviations: a share of the true value and a floor in Pa, added in squares. */
+    record Noise(
+            double modulusRelative, double modulusFloor, double stressRelative, double stressFloor,
+            double firstNormalRelative, double firstNormalFloor) {
+        /** Standard deviation in Pa of a storage or loss modulus in Pa. */
+        double ofModulus(double modulus) {
+            return StrictMath.hypot(modulusRelative * modulus, modulusFloor);
+        }
+
+        /** Standard deviation in Pa of a shear stress in Pa. */
+        double ofStress(double stress) {
+            return StrictMath.hypot(stressRelative * stress, stressFloor);
+        }
+
+        /** Standard deviation in Pa of a first normal stress difference in Pa. */
+        double ofFirstNormal(double difference) {
+            return StrictMath.hypot(firstNormalRelative * difference, firstNormalFloor);
+        }
+    }
+
+    /**
+     * What went into a lot of the compound.
+     *
+     * @param regrind             mass fraction of regrind in the polymer
+     * @param molarMassRatio      molar mass of the regrind over that of the virgin resin
+     * @param branchStrengthRatio strength of the regrind's branch peak over that of the virgin resin
+     * @param branchTimeRatio     further factor on the times of the regrind's branch peak
+     * @param chalk               mass fraction of chalk in the compound
+     * @param scissionRate        bonds broken in the rheometer per initial chain and second at the reference temperature
+     * @param plot                what is odd about the lot, for the reader of the truth
+     */
+    record Lot(
+            String name, double regrind, double molarMassRatio, double branchStrengthRatio, double branchTimeRatio,
+            double chalk, double scissionRate, String plot) {}
+
+    /** The truth as kept in the test resources. */
+    static Truth load() {
+        try (Reader reader = new InputStreamReader(
+                Objects.requireNonNull(Truth.class.getResourceAsStream("/scenario/truth.json")),
+                StandardCharsets.UTF_8)) {
+            return new Gson().fromJson(reader, Truth.class);
+        } catch (IOException e) {
+            throw new UncheckedIOException(e);
+        }
+    }
+
+    /** The lot of that name. */
+    Lot lot(String name) {
+        return lots.stream().filter(lot -> lot.name().equals(name)).findFirst().orElseThrow();
+    }
+
+    /** The fresh fluid of a lot at {@code kelvin}. */
+    HiddenFluid fluid(Lot lot, double kelvin) {
+        return fluid(lot, kelvin, 0);
+    }
+
+    /**
+     * The fluid of a lot that has been {@code seconds} at {@code kelvin}. Virgin and regrind peaks are mixed linearly in
+     * the logarithms of strength and centre with the mass fraction of regrind; broken chains shorten all times; chalk
+     * amplifies moduli and local strain; temperature shifts times and moduli.
+     */
+    HiddenFluid fluid(Lot lot, double kelvin, double seconds) {
+        double broken = lot.scissionRate() * shift.reaction(scission.activationEnergy(), kelvin) * seconds;
+        double shortened = StrictMath.pow(1 + broken, -scission.viscosityExponent());
+        double regrindTime = shortened
+                * StrictMath.pow(lot.molarMassRatio(), scission.viscosityExponent() * lot.regrind());
+        Peak backbone = resin.backbone().times(1, regrindTime);
+        Peak branches = resin.branches()
+                .times(
+                        StrictMath.pow(lot.branchStrengthRatio(), lot.regrind()),
+                        regrindTime * StrictMath.pow(lot.branchTimeRatio(), lot.regrind()));
+        double filling = chalk.volumeFraction(lot.chalk(), shift.meltDensity());
+        double stiffer = chalk.onModuli(filling) * shift.modulus(kelvin);
+        HiddenFluid.Mode[] modes = new HiddenFluid.Mode[resin.modes()];
+        for (int i = 0; i < modes.length; i++) {
+            double time = resin.time(i);
+            double modulus = backbone.modulus(time, resin.step()) + branches.modulus(time, resin.step());
+            modes[i] = new HiddenFluid.Mode(
+                    modulus * stiffer,
+                    time * shift.time(kelvin),
+                    nonlinear.damping(time) * chalk.onStrain(filling),
+                    nonlinear.secondNormal(time));
+        }
+        return new HiddenFluid(List.of(modes));
+    }
+}
