@@ -27,7 +27,7 @@ class HiddenFluidTest {
     @ValueSource(doubles = {1e-4, 0.01, 0.3, 1, 10, 300})
     void steady_shear_equals_the_defining_integral_of_finger_and_cauchy_tensors(double rate) {
         double[][] stress = extraStress(rate);
-        // 1e-9: the quadrature converges to rounding; the sum of 41 modes loses a few digits
+        // 1e-9: the quadrature converges to rounding; the sum of 46 modes loses a few digits
         assertRelative(stress[0][1], fluid.viscosity(rate) * rate, 1e-9);
         assertRelative(stress[0][0] - stress[1][1], fluid.firstNormalCoefficient(rate) * rate * rate, 1e-9);
         assertRelative(stress[1][1] - stress[2][2], fluid.secondNormalCoefficient(rate) * rate * rate, 1e-9);
@@ -35,7 +35,7 @@ class HiddenFluidTest {
 
     /**
      * Σ ∫ (g/λ) exp(−s/λ) exp(−n γ) [(1 − ψ) C⁻¹ − ψ C] ds from the deformation gradient, less the isotropic value at
-     * rest, by Gauss–Legendre panels of Commons Math over s from 0 to 60 λ.
+     * rest, by Gauss–Legendre panels of Commons Math until the kernel has faded to exp(−60).
      */
     private double[][] extraStress(double rate) {
         double[][] sum = new double[3][3];
@@ -44,8 +44,10 @@ class HiddenFluidTest {
                 for (int column = 0; column <= row; column++) {
                     int i = row;
                     int j = column;
-                    double part = integral(60 * mode.time(), s -> memory(mode, s, rate)
-                            * strain(mode, rate * s).getEntry(i, j));
+                    double fading = 1 / mode.time() + mode.damping() * rate;
+                    double part = integral(
+                            60 / fading,
+                            s -> memory(mode, s, rate) * strain(mode, rate * s).getEntry(i, j));
                     sum[i][j] += part;
                     sum[j][i] = sum[i][j];
                 }
@@ -61,7 +63,8 @@ class HiddenFluidTest {
     private static RealMatrix strain(Mode mode, double shear) {
         RealMatrix gradient = new Array2DRowRealMatrix(new double[][] {{1, shear, 0}, {0, 1, 0}, {0, 0, 1}});
         RealMatrix finger = gradient.multiply(gradient.transpose());
-        RealMatrix cauchy = new LUDecomposition(finger).getSolver().getInverse();
+        RealMatrix back = new LUDecomposition(gradient).getSolver().getInverse();
+        RealMatrix cauchy = back.transpose().multiply(back);
         double psi = mode.secondNormal();
         return finger.scalarMultiply(1 - psi)
                 .subtract(cauchy.scalarMultiply(psi))
@@ -100,7 +103,7 @@ class HiddenFluidTest {
 
     private double peakMoment(int order) {
         double sum = 0;
-        for (Peak peak : List.of(truth.resin().backbone(), truth.resin().branches())) {
+        for (Peak peak : truth.resin().peaks()) {
             sum += peak.strength()
                     * Math.pow(peak.centre(), order)
                     * Math.exp(order * order * peak.width() * peak.width() / 2);
@@ -123,7 +126,7 @@ class HiddenFluidTest {
     @Test
     void shear_stress_rises_with_rate_so_that_no_shear_band_can_form() {
         double before = 0;
-        for (double rate = 1e-4; rate < 3e3; rate *= 1.1) {
+        for (double rate = 1e-4; rate < 1e4; rate *= 1.1) {
             double stress = fluid.viscosity(rate) * rate;
             assertTrue(stress > before, "stress falls at " + rate + " 1/s");
             before = stress;
@@ -158,14 +161,18 @@ class HiddenFluidTest {
 
     @Test
     void the_lots_differ_as_their_plot_says() {
-        double rate = 1;
         HiddenFluid shorter = truth.fluid(truth.lot("R-01"), REFERENCE);
         HiddenFluid branched = truth.fluid(truth.lot("R-07"), REFERENCE);
+        HiddenFluid fresh = truth.fluid(truth.lot("R-11"), REFERENCE);
         HiddenFluid tested = truth.fluid(truth.lot("R-11"), REFERENCE, 5000);
-        assertTrue(shorter.viscosity(1e-6) < 0.85 * fluid.viscosity(1e-6));
-        assertTrue(branched.firstNormalCoefficient(rate) > 1.15 * fluid.firstNormalCoefficient(rate));
-        assertTrue(tested.loss(1) < 0.9 * truth.fluid(truth.lot("R-11"), REFERENCE).loss(1));
-        assertTrue(differenceAtTwentyKilopascal(branched) > 1.1 * differenceAtTwentyKilopascal(fluid), "N1 at equal stress");
+        assertTrue(shorter.viscosity(1e-6) < 0.85 * fluid.viscosity(1e-6), "R-01 flows more easily");
+        assertTrue(tested.loss(1) < 0.9 * fresh.loss(1), "R-11 changes while it is tested");
+        for (double rate : new double[] {0.1, 1, 10}) {
+            assertRelative(fluid.viscosity(rate), branched.viscosity(rate), 0.1);
+        }
+        assertTrue(
+                differenceAtTwentyKilopascal(branched) > 1.15 * differenceAtTwentyKilopascal(fluid),
+                "R-07 flows as A-00 but swells more");
     }
 
     /** N1 in Pa at a shear stress of 20 kPa. */

@@ -39,14 +39,37 @@ record Truth(
             return strength * step / (width * StrictMath.sqrt(2 * StrictMath.PI)) * StrictMath.exp(-z * z / 2);
         }
 
-        /** The peak with its strength and its centre multiplied by the given factors. */
-        Peak times(double strengthFactor, double centreFactor) {
-            return new Peak(strength * strengthFactor, centre * centreFactor, width);
+        /** The peak with its centre and its width multiplied by the given factors. */
+        Peak times(double centreFactor, double widthFactor) {
+            return new Peak(strength, centre * centreFactor, width * widthFactor);
         }
     }
 
-    /** Two peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale. */
-    record Resin(double shortestTime, double longestTime, int modes, Peak backbone, Peak branches) {
+    /**
+     * Three peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale: the segments, which do
+     * not feel how long a chain is, the backbone and the branches.
+     */
+    record Resin(
+            double shortestTime, double longestTime, int modes, Peak segments, Peak backbone, Peak branches) {
+        /** The three peaks. */
+        List<Peak> peaks() {
+            return List.of(segments, backbone, branches);
+        }
+
+        /** The same grid and segments with another backbone and other branches. */
+        Resin with(Peak otherBackbone, Peak otherBranches) {
+            return new Resin(shortestTime, longestTime, modes, segments, otherBackbone, otherBranches);
+        }
+
+        /** Modulus in Pa of the given mode, counted from zero. */
+        double modulus(int mode) {
+            double sum = 0;
+            for (Peak peak : peaks()) {
+                sum += peak.modulus(time(mode), step());
+            }
+            return sum;
+        }
+
         /** Distance of neighbouring times in ln(time). */
         double step() {
             return StrictMath.log(longestTime / shortestTime) / (modes - 1);
@@ -149,17 +172,22 @@ record Truth(
     /**
      * What went into a lot of the compound.
      *
-     * @param regrind             mass fraction of regrind in the polymer
-     * @param molarMassRatio      molar mass of the regrind over that of the virgin resin
-     * @param branchStrengthRatio strength of the regrind's branch peak over that of the virgin resin
-     * @param branchTimeRatio     further factor on the times of the regrind's branch peak
-     * @param chalk               mass fraction of chalk in the compound
-     * @param scissionRate        bonds broken in the rheometer per initial chain and second at the reference temperature
-     * @param plot                what is odd about the lot, for the reader of the truth
+     * @param regrind          mass fraction of regrind in the polymer
+     * @param molarMassRatio   molar mass of the regrind over that of the virgin resin
+     * @param branchWidthRatio width of the regrind's branch peak over that of the virgin resin
+     * @param dampingRatio     damping exponents of the regrind over those of the virgin resin
+     * @param chalk            mass fraction of chalk in the compound
+     * @param scissionRate     bonds broken in the rheometer per initial chain and second at the reference temperature
+     * @param plot             what is odd about the lot, for the reader of the truth
      */
     record Lot(
-            String name, double regrind, double molarMassRatio, double branchStrengthRatio, double branchTimeRatio,
-            double chalk, double scissionRate, String plot) {}
+            String name, double regrind, double molarMassRatio, double branchWidthRatio, double dampingRatio,
+            double chalk, double scissionRate, String plot) {
+        /** What a ratio of regrind to virgin comes to in the mixture, if the logarithms mix with the mass fraction. */
+        double mixed(double ratio) {
+            return StrictMath.pow(ratio, regrind);
+        }
+    }
 
     /** The truth as kept in the test resources. */
     static Truth load() {
@@ -183,32 +211,38 @@ record Truth(
     }
 
     /**
-     * The fluid of a lot that has been {@code seconds} at {@code kelvin}. Virgin and regrind peaks are mixed linearly in
-     * the logarithms of strength and centre with the mass fraction of regrind; broken chains shorten all times; chalk
-     * amplifies moduli and local strain; temperature shifts times and moduli.
+     * The fluid of a lot that has been {@code seconds} at {@code kelvin}: temperature shifts times and moduli, chalk
+     * amplifies moduli and the strain between the grains.
      */
     HiddenFluid fluid(Lot lot, double kelvin, double seconds) {
-        double broken = lot.scissionRate() * shift.reaction(scission.activationEnergy(), kelvin) * seconds;
-        double shortened = StrictMath.pow(1 + broken, -scission.viscosityExponent());
-        double regrindTime = shortened
-                * StrictMath.pow(lot.molarMassRatio(), scission.viscosityExponent() * lot.regrind());
-        Peak backbone = resin.backbone().times(1, regrindTime);
-        Peak branches = resin.branches()
-                .times(
-                        StrictMath.pow(lot.branchStrengthRatio(), lot.regrind()),
-                        regrindTime * StrictMath.pow(lot.branchTimeRatio(), lot.regrind()));
+        Resin mixed = mixed(lot, broken(lot, kelvin, seconds));
         double filling = chalk.volumeFraction(lot.chalk(), shift.meltDensity());
-        double stiffer = chalk.onModuli(filling) * shift.modulus(kelvin);
-        HiddenFluid.Mode[] modes = new HiddenFluid.Mode[resin.modes()];
+        HiddenFluid.Mode[] modes = new HiddenFluid.Mode[mixed.modes()];
         for (int i = 0; i < modes.length; i++) {
-            double time = resin.time(i);
-            double modulus = backbone.modulus(time, resin.step()) + branches.modulus(time, resin.step());
+            double time = mixed.time(i);
             modes[i] = new HiddenFluid.Mode(
-                    modulus * stiffer,
+                    mixed.modulus(i) * chalk.onModuli(filling) * shift.modulus(kelvin),
                     time * shift.time(kelvin),
-                    nonlinear.damping(time) * chalk.onStrain(filling),
+                    nonlinear.damping(time) * lot.mixed(lot.dampingRatio()) * chalk.onStrain(filling),
                     nonlinear.secondNormal(time));
         }
         return new HiddenFluid(List.of(modes));
+    }
+
+    /** Bonds broken per initial chain after {@code seconds} at {@code kelvin}. */
+    private double broken(Lot lot, double kelvin, double seconds) {
+        return lot.scissionRate() * shift.reaction(scission.activationEnergy(), kelvin) * seconds;
+    }
+
+    /**
+     * The unfilled melt of a lot: virgin and regrind mixed linearly in the logarithms of molar mass and peak width with
+     * the mass fraction of regrind; shorter chains shorten the times of backbone and branches.
+     */
+    private Resin mixed(Lot lot, double broken) {
+        double length = lot.mixed(lot.molarMassRatio()) / (1 + broken);
+        double onTimes = StrictMath.pow(length, scission.viscosityExponent());
+        return resin.with(
+                resin.backbone().times(onTimes, 1),
+                resin.branches().times(onTimes, lot.mixed(lot.branchWidthRatio())));
     }
 }
