@@ -21,14 +21,16 @@ record Column(String label, String symbol, String unit, List<Double> values) {
         values = List.copyOf(values);
     }
 
-    /** The same column with the numbers divided by 1000 and {@code k} before the unit. */
-    Column inThousands() {
-        return new Column(label, symbol, "k" + unit, values.stream().map(value -> value / 1000).toList());
+    /** The same column in kPa, if it is in Pa; else itself. */
+    Column inKilopascal() {
+        return unit.equals("Pa")
+                ? new Column(label, symbol, "kPa", values.stream().map(value -> value / 1000).toList())
+                : this;
     }
 
-    /** The same numbers under another unit: a mistake of whoever made the export. */
-    Column mislabelled(String wrongUnit) {
-        return new Column(label, symbol, wrongUnit, values);
+    /** The same numbers under kPa, if they are in Pa: a mistake of whoever made the export. */
+    Column mislabelledKilopascal() {
+        return unit.equals("Pa") ? new Column(label, symbol, "kPa", values) : this;
     }
 
     /** The number in {@code row} with four significant digits and a decimal point, never with an exponent. */

@@ -14,18 +14,28 @@ enum Dialect {
             return List.of(column -> column.label() + " [" + column.unit() + "]");
         }
     },
-    /** Semicolons and decimal commas, names in words, a row of units below, CRLF. */
+    /** Semicolons and decimal commas, names in words, a row of units below, stresses and moduli in kPa, CRLF. */
     SEMICOLON(";", "\r\n", ".csv", true) {
         @Override
         List<Function<Column, String>> headings() {
             return List.of(Column::label, Column::unit);
         }
+
+        @Override
+        List<Column> written(List<Column> columns) {
+            return withoutTime(columns).stream().map(Column::inKilopascal).toList();
+        }
     },
-    /** Tabs, symbols with the unit in brackets, LF. */
+    /** Tabs, symbols with the unit in brackets, the time of each point, LF. */
     TAB("\t", "\n", ".txt", false) {
         @Override
         List<Function<Column, String>> headings() {
             return List.of(column -> column.symbol() + " [" + column.unit() + "]");
+        }
+
+        @Override
+        List<Column> written(List<Column> columns) {
+            return columns;
         }
     };
 
@@ -44,13 +54,23 @@ enum Dialect {
     /** How the heading rows are made from the columns, from top to bottom. */
     abstract List<Function<Column, String>> headings();
 
+    /** The columns as this program writes them: which ones, and in which units. */
+    List<Column> written(List<Column> columns) {
+        return withoutTime(columns);
+    }
+
+    private static List<Column> withoutTime(List<Column> columns) {
+        return columns.stream().filter(column -> !column.label().equals("time")).toList();
+    }
+
     /** Ending of the file name, with its point. */
     String ending() {
         return ending;
     }
 
     /** The text of an export: the preamble as comment lines of key and value, the headings, and a line a row. */
-    String write(Map<String, String> preamble, List<Column> columns) {
+    String write(Map<String, String> preamble, List<Column> readings) {
+        List<Column> columns = written(readings);
         StringBuilder text = new StringBuilder();
         preamble.forEach((key, value) -> text.append("# ").append(key).append(": ").append(value).append(lineEnd));
         for (Function<Column, String> heading : headings()) {

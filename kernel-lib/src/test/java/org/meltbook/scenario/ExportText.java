@@ -5,7 +5,6 @@ import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
-import java.util.Arrays;
 import java.util.List;
 
 /**
@@ -20,24 +19,28 @@ record ExportText(List<String> comments, List<List<String>> headings, List<List<
 
     /** The content of a UTF-8 file with commas, semicolons (then with decimal commas) or tabs. */
     static ExportText of(Path file) throws IOException {
-        String text = Files.readString(file, StandardCharsets.UTF_8);
-        String separator = text.contains("\t") ? "\t" : text.contains("\r\n") ? ";" : ",";
-        List<String> comments = new ArrayList<>();
+        List<String> lines = Files.readString(file, StandardCharsets.UTF_8).lines().toList();
+        List<String> table = lines.stream().filter(line -> !line.startsWith("#")).toList();
+        String separator = separator(table.get(0));
         List<List<String>> headings = new ArrayList<>();
         List<List<String>> rows = new ArrayList<>();
-        for (String line : text.lines().toList()) {
-            if (line.startsWith("#")) {
-                comments.add(line.substring(1).strip());
-                continue;
-            }
-            List<String> cells = Arrays.asList(line.split(separator, -1));
-            if (cells.get(cells.size() - 1).matches("-?[0-9][-+0-9.,eE]*")) {
-                rows.add(separator.equals(";") ? cells.stream().map(c -> c.replace(',', '.')).toList() : cells);
-            } else {
+        for (String line : table) {
+            List<String> cells = List.of(line.split(separator, -1));
+            if (!cells.get(cells.size() - 1).matches("-?[0-9][-+0-9.,eE]*")) {
                 headings.add(cells);
+            } else {
+                rows.add(separator.equals(";") ? cells.stream().map(c -> c.replace(',', '.')).toList() : cells);
             }
         }
+        List<String> comments = lines.stream()
+                .filter(line -> line.startsWith("#"))
+                .map(line -> line.substring(1).strip())
+                .toList();
         return new ExportText(comments, headings, rows);
+    }
+
+    private static String separator(String headings) {
+        return headings.contains("\t") ? "\t" : headings.contains(";") ? ";" : ",";
     }
 
     /** The number in a row and column, both counted from zero. */

@@ -60,7 +60,7 @@ record HiddenFluid(List<Mode> modes) {
         return sum(mode -> firstNormalCoefficient(mode, rate));
     }
 
-    /** Second normal stress coefficient in Pa·s² of steady shear at {@code rate} in 1/s: each mode gives −ψ of its first. */
+    /** Second normal stress coefficient in Pa·s² at {@code rate} in 1/s: −ψ times the first, mode by mode. */
     double secondNormalCoefficient(double rate) {
         return sum(mode -> -mode.secondNormal() * firstNormalCoefficient(mode, rate));
     }

@@ -17,7 +17,7 @@ import org.junit.jupiter.params.provider.ValueSource;
 import org.meltbook.scenario.HiddenFluid.Mode;
 import org.meltbook.scenario.Truth.Peak;
 
-/** The truth must itself be true: closed forms against quadrature of the defining integral, limits and known moments. */
+/** The truth must itself be true: closed forms against quadrature of the defining integral, limits and moments. */
 class HiddenFluidTest {
     private static final double REFERENCE = 463.15;
     private final Truth truth = Truth.load();

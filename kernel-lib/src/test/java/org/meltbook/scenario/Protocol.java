@@ -22,8 +22,8 @@ final class Protocol {
     record Point(double setting, double time) {}
 
     /**
-     * A frequency sweep from 100 down to 0.01 rad/s, five points a decade, then 10 and 1 rad/s once more as a check of
-     * the sample. A point takes three cycles, 10 s at least.
+     * A frequency sweep from 100 down to 0.01 rad/s, five points a decade, then 10 and 1 rad/s once more as a check
+     * of the sample. A point takes three cycles, 10 s at least.
      */
     static List<Point> frequencySweep() {
         List<Double> settings = new ArrayList<>();
@@ -43,8 +43,8 @@ final class Protocol {
     }
 
     /**
-     * A steady flow curve from 0.01 up to 3.16 1/s, four points a decade. A point takes 30 s and six units of strain; at
-     * higher rates such a melt leaves the gap.
+     * A steady flow curve from 0.01 up to 3.16 1/s, four points a decade. A point takes 30 s and six units of strain;
+     * at higher rates such a melt leaves the gap.
      */
     static List<Point> flowCurve() {
         List<Double> settings = new ArrayList<>();

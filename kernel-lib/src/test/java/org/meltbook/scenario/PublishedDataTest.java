@@ -95,7 +95,7 @@ class PublishedDataTest {
         }
     }
 
-    /** From memory, as the spectrum itself: mean relaxation time 58.7 s and η0 of 5.0e4 to 5.2e4 Pa·s are quoted for it. */
+    /** From memory, as the spectrum itself: a mean relaxation time of 58.7 s and η0 of 5.0e4 to 5.2e4 Pa·s. */
     @Test
     void the_spectrum_of_melt_i_has_its_eight_modes_and_its_remembered_sums() throws IOException {
         ExportText text = ExportText.of(FOLDER.resolve("ldpe-melt-i-laun-1978.csv"));

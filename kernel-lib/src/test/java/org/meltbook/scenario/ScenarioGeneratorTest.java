@@ -16,8 +16,8 @@ import java.util.SortedMap;
 import java.util.TreeSet;
 import java.util.stream.Stream;
 import org.apache.commons.math3.distribution.ChiSquaredDistribution;
-import org.apache.commons.math3.stat.inference.KolmogorovSmirnovTest;
 import org.apache.commons.math3.distribution.NormalDistribution;
+import org.apache.commons.math3.stat.inference.KolmogorovSmirnovTest;
 import org.junit.jupiter.api.Test;
 
 /** The checked-in exports are what the generator writes, and scatter about the truth as stated. */
@@ -101,7 +101,8 @@ class ScenarioGeneratorTest {
         double sum = residuals.stream().mapToDouble(z -> z * z).sum();
         ChiSquaredDistribution expected = new ChiSquaredDistribution(residuals.size());
         assertTrue(
-                sum > expected.inverseCumulativeProbability(0.005) && sum < expected.inverseCumulativeProbability(0.995),
+                sum > expected.inverseCumulativeProbability(0.005)
+                        && sum < expected.inverseCumulativeProbability(0.995),
                 "χ² = " + sum + " of " + residuals.size());
         double[] sample = residuals.stream().mapToDouble(Double::doubleValue).toArray();
         double shape = new KolmogorovSmirnovTest().kolmogorovSmirnovTest(new NormalDistribution(null, 0, 1), sample);

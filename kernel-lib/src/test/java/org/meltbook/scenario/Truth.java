@@ -46,8 +46,8 @@ record Truth(
     }
 
     /**
-     * Three peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale: the segments, which do
-     * not feel how long a chain is, the backbone and the branches.
+     * Three peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale: the segments, which
+     * do not feel how long a chain is, the backbone and the branches.
      */
     record Resin(
             double shortestTime, double longestTime, int modes, Peak segments, Peak backbone, Peak branches) {
@@ -88,12 +88,12 @@ record Truth(
     record Nonlinear(
             double fastDamping, double slowDamping, double fastSecondNormal, double slowSecondNormal,
             double turnoverTime) {
-        /** Damping exponent, no unit, of the mode with relaxation time {@code time} in s at the reference temperature. */
+        /** Damping exponent, no unit, of the mode with {@code time} in s at the reference temperature. */
         double damping(double time) {
             return fastDamping + (slowDamping - fastDamping) * time / (time + turnoverTime);
         }
 
-        /** −N2/N1, no unit, of the mode with relaxation time {@code time} in s at the reference temperature. */
+        /** −N2/N1, no unit, of the mode with {@code time} in s at the reference temperature. */
         double secondNormal(double time) {
             return fastSecondNormal + (slowSecondNormal - fastSecondNormal) * time / (time + turnoverTime);
         }
@@ -135,18 +135,21 @@ record Truth(
             return filler / (filler + (1 - massFraction) / melt);
         }
 
-        /** Factor on the linear moduli at a volume fraction, by Krieger and Dougherty. */
+        /** Factor on the linear moduli at a volume fraction: (1 − φ/φm)^(−[η] φm) of Krieger and Dougherty. */
         double onModuli(double volumeFraction) {
             return StrictMath.pow(1 - volumeFraction / maximumPacking, -intrinsicViscosity * maximumPacking);
         }
 
-        /** How much faster than the whole the melt between the grains is strained: root of (factor on moduli)/(1 − φ). */
+        /**
+         * How much more than the whole the melt between the grains is strained: the root of (factor on moduli)/(1 − φ),
+         * by Chateau, Ovarlez and Trung, J. Rheol. 52 (2008) 489 (memory).
+         */
         double onStrain(double volumeFraction) {
             return StrictMath.sqrt(onModuli(volumeFraction) / (1 - volumeFraction));
         }
     }
 
-    /** Times go with molar mass to the power {@code viscosityExponent}; the activation energy in J/mol is that of breaking. */
+    /** Times go with molar mass to the power {@code viscosityExponent}; breaking has an activation energy in J/mol. */
     record Scission(double viscosityExponent, double activationEnergy) {}
 
     /** Standard deviations: a share of the true value and a floor in Pa, added in squares. */
