@@ -23,6 +23,7 @@ final class CellNumber {
     private int kept;
     private int leading;
     private int decimals;
+    private int closingZeros;
     private double value;
 
     CellNumber(DecimalSign decimal) {
@@ -34,9 +35,9 @@ final class CellNumber {
         return value;
     }
 
-    /** With how many significant digits it was written. */
+    /** With how many digits it was surely measured: closing zeros of a whole number may only fill it up. */
     int digits() {
-        return kept - leading;
+        return kept - leading - (decimals == 0 ? closingZeros : 0);
     }
 
     /** Whether the cell is a finite number or NaN; then {@link #value} and {@link #digits} are those of the cell. */
@@ -47,6 +48,7 @@ final class CellNumber {
         kept = 0;
         leading = 0;
         decimals = 0;
+        closingZeros = 0;
         if (cell.equalsIgnoreCase("nan")) {
             value = Double.NaN;
             return true;
@@ -108,6 +110,7 @@ final class CellNumber {
             mantissa = mantissa * 10 + digit;
         }
         kept++;
+        closingZeros = digit == 0 ? closingZeros + 1 : 0;
         decimals += afterSign ? 1 : 0;
     }
 

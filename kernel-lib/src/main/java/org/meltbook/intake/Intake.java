@@ -71,10 +71,11 @@ public final class Intake implements Exhibit {
         if (found.size() == 1) {
             return found.get(0);
         }
-        String samples = found.stream().map(m -> "'" + m.conditions().sample() + "'").collect(Collectors.joining(", "));
-        throw new RangeException(log.file() + " holds " + (found.isEmpty() ? "no " : found.size() + " ") + kind
-                + (found.size() > 1 ? "s, of " + samples + ": take one from " : "; it holds " + contents())
-                + (found.size() > 1 ? (kind.equals("flow curve") ? "flowCurves()" : "frequencySweeps()") : ""));
+        if (found.isEmpty()) {
+            throw new RangeException(log.file() + " holds no " + kind + "; it holds " + contents());
+        }
+        throw new RangeException(log.file() + " holds " + found.size() + " " + kind + "s: take one of the list, by sample: "
+                + found.stream().map(m -> "'" + m.conditions().sample() + "'").collect(Collectors.joining(", ")));
     }
 
     /**
