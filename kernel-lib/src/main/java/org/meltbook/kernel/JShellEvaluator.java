@@ -7,6 +7,7 @@ import java.util.Comparator;
 import java.util.Deque;
 import java.util.List;
 import java.util.Optional;
+import java.util.concurrent.atomic.AtomicBoolean;
 import java.util.stream.Stream;
 import jdk.jshell.DeclarationSnippet;
 import jdk.jshell.JShell;
@@ -35,6 +36,7 @@ public final class JShellEvaluator implements Evaluator {
     private final Failures failures;
     private final Inspection inspection;
     private final CellStreams streams;
+    private final AtomicBoolean open = new AtomicBoolean(true);
     private Optional<Cell.Stage> stage = Optional.empty();
     private int cells;
 
@@ -47,6 +49,7 @@ public final class JShellEvaluator implements Evaluator {
         failures = new Failures(shell, settings.speaksForItself());
         inspection = new Inspection(shell, loader.classes());
         streams = new CellStreams();
+        ExitGuard.raise();
     }
 
     /**
@@ -278,9 +281,12 @@ public final class JShellEvaluator implements Evaluator {
 
     @Override
     public void close() {
-        stage.ifPresent(Cell::leave);
-        streams.close();
-        shell.close();
+        if (open.getAndSet(false)) {
+            ExitGuard.lower();
+            stage.ifPresent(Cell::leave);
+            streams.close();
+            shell.close();
+        }
     }
 
     /** Variables that bare expressions left behind; none in a healthy session. */
