@@ -65,6 +65,14 @@ final class Failures {
                 : compileError(origin, open, "this comment has no end");
     }
 
+    /** A cell on which the compiler itself broke down. */
+    Outcome.Failed beyondCompiler(Throwable broken) {
+        String message = broken.toString().contains("StackOverflowError")
+                ? "an expression of this cell is nested too deeply to be compiled"
+                : "the compiler cannot take this cell: " + broken;
+        return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, 0, List.of(message));
+    }
+
     private static Outcome.Failed compileError(Origin origin, int at, String message) {
         return new Outcome.Failed(
                 Outcome.Reason.COMPILE,
@@ -124,7 +132,7 @@ final class Failures {
         int line = current.cell.lineAt(current.offset);
         List<String> report = new ArrayList<>();
         report.add("the result cannot be shown: " + (speaksForItself.test(thrown) ? message : kind + ": " + message));
-        report.addAll(caret(current.cell, line, 0));
+        report.addAll(caret(current.cell, line, -1));
         report.addAll(causesOf(thrown));
         return new Outcome.Failed(Outcome.Reason.THROWN, kind, message, line, report);
     }

@@ -178,6 +178,19 @@ class CellFailureTest {
     }
 
     @Test
+    void survives_an_expression_beyond_the_compiler() {
+        Outcome.Failed failed = failure("1" + " + 1".repeat(20_000));
+        assertEquals("an expression of this cell is nested too deeply to be compiled", failed.message());
+        evaluator.run("int afterwards = 5;", outlet);
+    }
+
+    @Test
+    void says_that_a_result_cannot_be_shown_whatever_its_text_throws() {
+        evaluator.run("class Odd { public String toString() { throw new AssertionError(\"odd\"); } }", outlet);
+        assertEquals("AssertionError", failure("new Odd()").kind());
+    }
+
+    @Test
     void survives_an_exhausted_heap() {
         Outcome.Failed failed = failure("var hoard = new ArrayList<long[]>();\nfor (;;) hoard.add(new long[8_000_000]);");
         assertEquals("OutOfMemoryError", failed.kind());
