@@ -14,7 +14,10 @@ import org.meltbook.units.Prediction;
  * @param modulus   G′ = G″ there, in Pa
  */
 public record Crossover(Prediction frequency, Prediction modulus) {
-    /** Angular frequencies in rad/s between {@code low} and {@code high} where the moduli of a spectrum are equal, rising. */
+    /**
+     * Angular frequencies in rad/s between {@code low} and {@code high} where the moduli of a spectrum are equal,
+     * rising.
+     */
     static Doubles frequencies(RelaxationSpectrum spectrum, double low, double high) {
         DoubleUnaryOperator lead = log -> Math.log(spectrum.storage(Math.exp(log)) / spectrum.loss(Math.exp(log)));
         double[] logs = RelaxationSpectrum.spread(low, high).map(Math::log).toArray();

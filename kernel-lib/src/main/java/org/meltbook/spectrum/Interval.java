@@ -2,15 +2,19 @@ package org.meltbook.spectrum;
 
 import java.util.stream.DoubleStream;
 
-/** The middle 95 % of many values; both ends NaN, not known, if more than one in twenty of them is missing. */
+/**
+ * A 95 % interval of a positive number from refits, reflected in logarithms about the number itself: where refits lie
+ * above the number, the number is taken to lie above the truth by as much. Both ends are NaN, not known, if more than
+ * one refit in twenty gives no number.
+ */
 record Interval(double low, double high) {
-    static Interval of(DoubleStream values) {
-        double[] all = values.toArray();
-        double[] there = DoubleStream.of(all).filter(v -> !Double.isNaN(v)).sorted().toArray();
+    static Interval about(double value, DoubleStream refits) {
+        double[] all = refits.toArray();
+        double[] there = DoubleStream.of(all).filter(v -> v > 0).sorted().toArray();
         if (there.length < 0.95 * all.length || there.length == 0) {
             return new Interval(Double.NaN, Double.NaN);
         }
-        return new Interval(quantile(there, 0.025), quantile(there, 0.975));
+        return new Interval(value * (value / quantile(there, 0.975)), value * (value / quantile(there, 0.025)));
     }
 
     private static double quantile(double[] sorted, double share) {

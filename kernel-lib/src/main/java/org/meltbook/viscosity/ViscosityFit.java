@@ -2,6 +2,9 @@ package org.meltbook.viscosity;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Locale;
+import java.util.Optional;
+import java.util.stream.IntStream;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
@@ -21,11 +24,11 @@ import org.meltbook.units.Quantity;
 /**
  * A viscosity law fitted to a flow curve with equal relative errors; only usable rows take part.
  *
- * <p>The zero-shear viscosity is given as a plain number only if the plateau was measured. Three things are asked of the
- * points within half a decade of the lowest rate (three points at least); the limits are common practice, not a standard:
- * the measured slope d ln η / d ln γ̇ lies within 0.1 of zero; the law at the lowest rate is within 5 % of its limit at
- * rate zero; the law lies within 5 % of the measured mean. Otherwise the mean of these points is a lower bound, if the
- * viscosity does not rise with the rate there.
+ * <p>The zero-shear viscosity is given as a plain number only if the plateau was measured. Three things are asked of
+ * the points within half a decade of the lowest rate (three points at least); the limits are common practice, not a
+ * standard: the measured slope d ln η / d ln γ̇ lies within 0.1 of zero; the law at the lowest rate is within 5 % of
+ * its limit at rate zero; the law lies within 5 % of the measured mean. Otherwise the mean of these points is a lower
+ * bound, if the viscosity does not rise with the rate there.
  */
 public final class ViscosityFit implements Exhibit {
     private static final double LEVEL_SLOPE = 0.1;
@@ -52,8 +55,8 @@ public final class ViscosityFit implements Exhibit {
     /**
      * The law of a family that lies nearest to the flow curve.
      *
-     * @throws org.meltbook.base.RangeException if the usable rows are too few for the free parameters, or one has a rate
-     *     or viscosity that is not above zero
+     * @throws org.meltbook.base.RangeException if the usable rows are too few for the free parameters, or one has a
+     *     rate or viscosity that is not above zero
      */
     public static ViscosityFit of(FlowCurve curve, LawFamily family, Progress progress) {
         Curve usable = curve.viscosity().usable();
@@ -91,15 +94,24 @@ public final class ViscosityFit implements Exhibit {
         double slope = low.slope();
         String name = "zero-shear viscosity";
         if (slope > LEVEL_SLOPE) {
-            return Prediction.undetermined(name, Quantity.VISCOSITY, "the viscosity rises with the rate at the low end, "
-                    + "with slope " + NumberText.of(slope, 2));
+            return Prediction.undetermined(
+                    name,
+                    Quantity.VISCOSITY,
+                    "the viscosity rises with the rate at the low end, " + "with slope " + NumberText.of(slope, 2));
         }
         String reason = refusal(low, lowest, slope);
         if (!reason.isEmpty()) {
             return Prediction.atLeast(name, Quantity.VISCOSITY, low.mean(), reason);
         }
-        Estimate eta0 = fit.estimate("eta0");
-        return Prediction.of(name, Quantity.VISCOSITY, law.zeroRateLimit(), eta0.low(), eta0.high());
+        double limit = law.zeroRateLimit();
+        Optional<Estimate> eta0 =
+                fit.estimates().stream().filter(e -> e.value() == limit).findFirst();
+        return Prediction.of(
+                name,
+                Quantity.VISCOSITY,
+                limit,
+                eta0.map(Estimate::low).orElse(Double.NaN),
+                eta0.map(Estimate::high).orElse(Double.NaN));
     }
 
     private String refusal(CurveShape low, double lowest, double slope) {
@@ -114,10 +126,11 @@ public final class ViscosityFit implements Exhibit {
         }
         double share = law.at(lowest) / limit;
         if (!(Math.abs(share - 1) <= NEAR)) {
-            return "no plateau was reached: the fitted law is at " + NumberText.of(100 * share, 2)
-                    + " % of its limit" + where + " (95 % asked)";
+            return "no plateau was reached: the fitted law is at " + NumberText.of(100 * share, 2) + " % of its limit"
+                    + where + " (95 % asked)";
         }
-        double miss = low.rates().stream().map(law::at).map(Math::log).average().orElse(Double.NaN) - Math.log(low.mean());
+        double miss =
+                low.rates().stream().map(law::at).map(Math::log).average().orElse(Double.NaN) - Math.log(low.mean());
         if (!(Math.abs(miss) <= NEAR)) {
             return "the " + family.name() + " misses the points at the low end by " + NumberText.of(100 * miss, 2)
                     + " % on average (5 % allowed)";
@@ -133,12 +146,13 @@ public final class ViscosityFit implements Exhibit {
                 .map(Estimate::toString)
                 .toList();
         return capital(family.name()) + (sample.isEmpty() ? "" : " for " + sample) + ": " + String.join(", ", values)
-                + "; " + fit.residuals().size() + " points used, " + curve.viscosity().setAside() + " set aside, "
+                + "; " + fit.residuals().size() + " points used, "
+                + curve.viscosity().setAside() + " set aside, "
                 + fit.spread() + (fit.status() == Fit.Status.CONVERGED ? "" : "; NOT converged") + ".";
     }
 
     private static String capital(String text) {
-        return text.substring(0, 1).toUpperCase(java.util.Locale.ROOT) + text.substring(1);
+        return text.substring(0, 1).toUpperCase(Locale.ROOT) + text.substring(1);
     }
 
     @Override
@@ -162,16 +176,21 @@ public final class ViscosityFit implements Exhibit {
         Doubles rates = fit.problem().x();
         Doubles line = Doubles.logSpaced(rates.smallest(), rates.largest(), LINE_POINTS);
         Figure.Builder figure = Figure.titled(capital(family.name()) + " and measured viscosity"
-                        + (curve.conditions().sample().isEmpty() ? "" : " of " + curve.conditions().sample()))
+                        + (curve.conditions().sample().isEmpty()
+                                ? ""
+                                : " of " + curve.conditions().sample()))
                 .x(Quantity.SHEAR_RATE)
                 .y(Quantity.VISCOSITY)
                 .line(family.name(), line, line.map(law::at))
                 .marks("measured", rates, fit.problem().y());
         if (curve.viscosity().setAside() > 0) {
-            int[] rows = java.util.stream.IntStream.range(0, curve.viscosity().size())
+            int[] rows = IntStream.range(0, curve.viscosity().size())
                     .filter(row -> !curve.viscosity().verdicts().get(row).usable())
                     .toArray();
-            figure.marks("set aside", curve.viscosity().x().values().pick(rows), curve.viscosity().y().values().pick(rows));
+            figure.marks(
+                    "set aside",
+                    curve.viscosity().x().values().pick(rows),
+                    curve.viscosity().y().values().pick(rows));
         }
         return figure.caption("The line is drawn where it was fitted, " + NumberText.of(rates.smallest()) + " to "
                         + NumberText.of(rates.largest()) + " 1/s.")

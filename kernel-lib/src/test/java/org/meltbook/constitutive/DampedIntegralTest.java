@@ -32,14 +32,20 @@ class DampedIntegralTest {
         // ten digits printed
         for (int i = 0; i < response.rates().size(); i++) {
             near(steady.numbers("eta_single_exp_Pa_s")[i], response.viscosity().at(i), 1e-9);
-            near(steady.numbers("Psi1_single_exp_Pa_s2")[i], response.firstNormalStressCoefficient().at(i), 1e-9);
+            near(
+                    steady.numbers("Psi1_single_exp_Pa_s2")[i],
+                    response.firstNormalStressCoefficient().at(i),
+                    1e-9);
         }
         ReferenceTable growth = ReferenceTable.of("computed_ldpe_melt_I_startup_single_exp.csv");
         for (int i = 0; i < growth.numbers("time_s").length; i++) {
             StartUpResponse startUp = MODEL.startUpShear(
                     growth.numbers("shear_rate_1_per_s")[i], Doubles.of(growth.numbers("time_s")[i]));
             near(growth.numbers("eta_plus_Pa_s")[i], startUp.shearStressGrowth().at(0), 1e-9);
-            near(growth.numbers("Psi1_plus_Pa_s2")[i], startUp.firstNormalStressGrowth().at(0), 1e-9);
+            near(
+                    growth.numbers("Psi1_plus_Pa_s2")[i],
+                    startUp.firstNormalStressGrowth().at(0),
+                    1e-9);
         }
     }
 

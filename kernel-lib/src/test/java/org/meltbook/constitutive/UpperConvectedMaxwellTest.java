@@ -31,7 +31,10 @@ class UpperConvectedMaxwellTest {
     void in_steady_shear_neither_viscosity_nor_normal_stress_coefficient_depends_on_the_rate(double rate) {
         SteadyShearResponse steady = MODEL.steadyShear(Doubles.of(rate));
         near(MELT.zeroShearViscosity(), steady.viscosity().at(0), 1e-13);
-        near(MELT.zeroRateNormalStressCoefficient(), steady.firstNormalStressCoefficient().at(0), 1e-13);
+        near(
+                MELT.zeroRateNormalStressCoefficient(),
+                steady.firstNormalStressCoefficient().at(0),
+                1e-13);
         assertEquals(0, steady.secondNormalStressDifference().at(0));
     }
 
@@ -60,7 +63,8 @@ class UpperConvectedMaxwellTest {
                 normal += 2 * rate * rate * mode.viscosity() * mode.time() * grown;
             }
             Stress stress = MODEL.stress(new StartUpShear(rate), time);
-            // rounding of the scaled matrix grows with λ γ̇, here up to 1e6; the closed form of N₁ loses six digits by itself
+            // rounding of the scaled matrix grows with λ γ̇, here up to 1e6; the closed form of N₁ loses six digits by
+            // itself
             double tolerance = 1e-11 + 1e-15 * rate * 1000;
             near(shear, stress.shear(), tolerance);
             near(normal, stress.firstNormalDifference(), 1e-9 + 1e-15 * rate * 1000);
@@ -74,8 +78,10 @@ class UpperConvectedMaxwellTest {
         Stress late = MODEL.stress(new StartUpShear(3), 1e6);
         near(steady.shear(), late.shear(), 1e-12);
         near(steady.firstNormalDifference(), late.firstNormalDifference(), 1e-12);
-        assertEquals(Stress.NONE.components(), MODEL.stress(new StartUpShear(3), 0).components());
-        assertEquals(Stress.NONE.components(), MODEL.stress(new StartUpShear(3), -1).components());
+        assertEquals(
+                Stress.NONE.components(), MODEL.stress(new StartUpShear(3), 0).components());
+        assertEquals(
+                Stress.NONE.components(), MODEL.stress(new StartUpShear(3), -1).components());
     }
 
     @Test
@@ -89,8 +95,8 @@ class UpperConvectedMaxwellTest {
         }
         ReferenceTable growth = ReferenceTable.of("ucm_startup_shear.csv");
         for (int i = 0; i < growth.numbers("time[s]").length; i++) {
-            Stress stress = ONE.stress(
-                    new StartUpShear(growth.numbers("shear_rate[1/s]")[i]), growth.numbers("time[s]")[i]);
+            Stress stress =
+                    ONE.stress(new StartUpShear(growth.numbers("shear_rate[1/s]")[i]), growth.numbers("time[s]")[i]);
             // the two methods of the table agree to 1.2e-11
             near(growth.numbers("sigma[Pa]")[i], stress.shear(), 2e-11);
             near(growth.numbers("N1[Pa]")[i], stress.firstNormalDifference(), 2e-11);
@@ -100,8 +106,10 @@ class UpperConvectedMaxwellTest {
     /** A cessation, given as a flow of its own: σ decays like exp(−t/λ), N₁ too (one mode, closed form). */
     @Test
     void carries_any_history_of_constant_pieces() {
-        Flow cessation = new Pieces(VelocityGradient.simpleShear(4), VelocityGradient.REST, List.of(
-                Component.XX, Component.YY, Component.ZZ, Component.XY));
+        Flow cessation = new Pieces(
+                VelocityGradient.simpleShear(4),
+                VelocityGradient.REST,
+                List.of(Component.XX, Component.YY, Component.ZZ, Component.XY));
         Stress stress = ONE.stress(cessation, 0.7);
         near(20000 * 0.5 * 4 * Math.exp(-0.7 / 0.5), stress.shear(), 1e-13);
         near(2 * 20000 * 0.25 * 16 * Math.exp(-0.7 / 0.5), stress.firstNormalDifference(), 1e-13);
@@ -147,7 +155,11 @@ class UpperConvectedMaxwellTest {
         for (double time : new double[] {1e-7, 1e-3, 10, 1e7}) {
             near(
                     wide.stressGrowth(time),
-                    new UpperConvectedMaxwell(wide).stress(new StartUpShear(1e-3), time).shear() / 1e-3, 1e-11);
+                    new UpperConvectedMaxwell(wide)
+                                    .stress(new StartUpShear(1e-3), time)
+                                    .shear()
+                            / 1e-3,
+                    1e-11);
         }
     }
 

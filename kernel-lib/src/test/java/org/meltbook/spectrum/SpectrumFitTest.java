@@ -7,6 +7,7 @@ import static org.junit.jupiter.api.Assertions.assertTrue;
 import java.util.ArrayList;
 import java.util.Collections;
 import java.util.List;
+import java.util.Random;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
@@ -29,7 +30,8 @@ class SpectrumFitTest {
         return FrequencySweep.of(
                 Conditions.of("made sample", "made in a test"),
                 Curve.of(omega, Series.of(Quantity.STORAGE_MODULUS, storage.toArray())),
-                Curve.of(omega, Series.of(Quantity.LOSS_MODULUS, loss.toArray())), List.of());
+                Curve.of(omega, Series.of(Quantity.LOSS_MODULUS, loss.toArray())),
+                List.of());
     }
 
     private static FrequencySweep made(double low, double high, int points) {
@@ -69,6 +71,36 @@ class SpectrumFitTest {
         }
     }
 
+    /**
+     * Sixty sweeps with 3 % scatter from a spectrum that is log-normal in λ; nominal 95 %, found 85 % or more
+     * (seeded).
+     */
+    @Test
+    void intervals_hold_the_truth_about_as_often_as_they_say() {
+        Doubles times = Doubles.logSpaced(1e-6, 100, 121);
+        RelaxationSpectrum smooth = RelaxationSpectrum.of(
+                times.map(t -> 4000 * Math.exp(-0.5 * Math.pow((Math.log10(t) + 2.5) / 1.5, 2))), times);
+        double crossover = Crossover.frequencies(smooth, 0.01, 1e4).at(0);
+        Doubles frequencies = Doubles.logSpaced(1e-3, 1e3, 40);
+        Random random = new Random(5);
+        int viscosities = 0;
+        int crossovers = 0;
+        for (int k = 0; k < 60; k++) {
+            SpectrumFit fit = SpectrumFit.of(sweep(
+                    frequencies,
+                    frequencies.map(w -> smooth.storage(w) * Math.exp(0.03 * random.nextGaussian())),
+                    frequencies.map(w -> smooth.loss(w) * Math.exp(0.03 * random.nextGaussian()))));
+            viscosities += holds(fit.zeroShearViscosity(), smooth.zeroShearViscosity()) ? 1 : 0;
+            crossovers += holds(fit.crossovers().get(0).frequency(), crossover) ? 1 : 0;
+        }
+        assertTrue(viscosities >= 49, "zero-shear viscosity held " + viscosities + " times of 60");
+        assertTrue(crossovers >= 49, "crossover held " + crossovers + " times of 60");
+    }
+
+    private static boolean holds(Prediction prediction, double truth) {
+        return prediction.low() <= truth && truth <= prediction.high();
+    }
+
     /** One mode crosses over at ω = 1/λ and G′ = G″ = g/2 (closed form). */
     @Test
     void one_mode_crosses_over_at_the_inverse_of_its_time() {
@@ -94,10 +126,13 @@ class SpectrumFitTest {
         FrequencySweep flagged = FrequencySweep.of(
                 whole.conditions(),
                 new Curve(whole.storage().x(), Series.of(Quantity.STORAGE_MODULUS, spoiled), verdicts),
-                whole.loss(), List.of());
+                whole.loss(),
+                List.of());
         SpectrumFit fit = SpectrumFit.of(flagged, 1);
         assertTrue(fit.rootMeanSquare() < 1e-10);
-        assertTrue(fit.cautions().contains("1 point is marked unusable and took no part"), fit.cautions().toString());
+        assertTrue(
+                fit.cautions().contains("1 point is marked unusable and took no part"),
+                fit.cautions().toString());
     }
 
     @ParameterizedTest
@@ -106,7 +141,8 @@ class SpectrumFitTest {
         FrequencySweep whole = made(1e-3, 1e4, 10);
         double[] spoiled = whole.loss().y().toArray();
         spoiled[4] = bad;
-        FrequencySweep broken = sweep(whole.loss().x().values(), whole.storage().y().values(), Doubles.of(spoiled));
+        FrequencySweep broken =
+                sweep(whole.loss().x().values(), whole.storage().y().values(), Doubles.of(spoiled));
         RangeException refused = assertThrows(RangeException.class, () -> SpectrumFit.of(broken));
         assertTrue(refused.getMessage().contains("point 5 of the loss modulus"), refused.getMessage());
     }

@@ -35,7 +35,8 @@ class ViscosityFitTest {
     }
 
     private static FlowCurve silicone(String density) {
-        ReferenceTable table = ReferenceTable.of("flow_curves_pdms_corundum_sand.csv").where("density_g_per_cm3", density);
+        ReferenceTable table =
+                ReferenceTable.of("flow_curves_pdms_corundum_sand.csv").where("density_g_per_cm3", density);
         return FlowCurve.ofStress(
                 Conditions.of("silicone with corundum sand, " + density + " g/cm3", "Zwaan 2018"),
                 table.numbers("shear_rate_1_per_s"),
@@ -44,8 +45,11 @@ class ViscosityFitTest {
 
     static List<ViscosityLaw> truths() {
         return List.of(
-                new Newtonian(812), new PowerLaw(5200, 0.41), new Cross(9300, 0.8, 0.66),
-                CarreauYasuda.of(51000, 3.1, 0.7, 0.35), CarreauYasuda.of(420, 0.05, 2, 0.6));
+                new Newtonian(812),
+                new PowerLaw(5200, 0.41),
+                new Cross(9300, 0.8, 0.66),
+                CarreauYasuda.of(51000, 3.1, 0.7, 0.35),
+                CarreauYasuda.of(420, 0.05, 2, 0.6));
     }
 
     @ParameterizedTest
@@ -55,13 +59,17 @@ class ViscosityFitTest {
         ViscosityFit fit = ViscosityFit.of(curve(rates, rates.map(truth::at)), truth.family());
         assertEquals(Fit.Status.CONVERGED, fit.fit().status());
         for (int i = 0; i < truth.values().size(); i++) {
-            assertEquals(truth.values().at(i), fit.law().values().at(i), 1e-7 * truth.values().at(i));
+            assertEquals(
+                    truth.values().at(i),
+                    fit.law().values().at(i),
+                    1e-7 * truth.values().at(i));
         }
     }
 
     /**
-     * The published summary of Zwaan et al. 2018 gives stress exponents from 1.06 to 1.10 over the six loadings. The value of
-     * each loading is the slope of ln rate over ln stress through all 19 points, worked out elsewhere from the same data.
+     * The published summary of Zwaan et al. 2018 gives stress exponents from 1.06 to 1.10 over the six loadings. The
+     * value of each loading is the slope of ln rate over ln stress through all 19 points, worked out elsewhere from the
+     * same data.
      */
     @ParameterizedTest
     @CsvSource({"0.99, 1.060", "1.2, 1.064", "1.3, 1.071", "1.4, 1.081", "1.5, 1.090", "1.6, 1.103"})
@@ -70,14 +78,19 @@ class ViscosityFitTest {
         assertEquals(exponent, found.value(), 0.005);
         // 1.06 and 1.10 as printed, to their last digit
         assertTrue(found.value() > 1.055 && found.value() < 1.105, found.toString());
-        PowerLaw law = (PowerLaw) ViscosityFit.of(silicone(density), PowerLaw.FAMILY).law();
+        PowerLaw law =
+                (PowerLaw) ViscosityFit.of(silicone(density), PowerLaw.FAMILY).law();
         assertEquals(found.value(), law.stressExponent(), 0.005);
     }
 
     @Test
     void the_stress_exponent_of_a_power_law_is_the_inverse_of_its_own() {
         Doubles rates = Doubles.logSpaced(1e-2, 10, 7);
-        assertEquals(1 / 0.4, StressExponent.of(curve(rates, rates.map(new PowerLaw(50, 0.4)::at))).value(), 1e-12);
+        assertEquals(
+                1 / 0.4,
+                StressExponent.of(curve(rates, rates.map(new PowerLaw(50, 0.4)::at)))
+                        .value(),
+                1e-12);
         assertThrows(RangeException.class, () -> StressExponent.of(curve(Doubles.of(1, 2), Doubles.of(1, 1))));
         assertThrows(RangeException.class, () -> StressExponent.of(curve(Doubles.of(0, 1, 2), Doubles.of(1, 1, 1))));
     }
@@ -118,6 +131,14 @@ class ViscosityFitTest {
     }
 
     @Test
+    void a_power_law_through_a_level_curve_is_no_failure() {
+        Doubles rates = Doubles.logSpaced(1e-3, 1, 12);
+        ViscosityFit fit = ViscosityFit.of(curve(rates, rates.map(r -> 64)), PowerLaw.FAMILY);
+        assertEquals(1, ((PowerLaw) fit.law()).n(), 1e-9);
+        assertTrue(fit.zeroShearViscosity().toString().contains("zero-shear viscosity"));
+    }
+
+    @Test
     void leaves_unusable_rows_out_and_says_how_many() {
         Cross truth = new Cross(9300, 0.8, 0.66);
         Doubles rates = Doubles.logSpaced(1e-3, 1e3, 20);
@@ -130,7 +151,8 @@ class ViscosityFitTest {
                 Conditions.of("", "made in a test"),
                 new Curve(rate, Series.of(Quantity.SHEAR_STRESS, viscosities), verdicts),
                 new Curve(rate, Series.of(Quantity.VISCOSITY, viscosities), verdicts),
-                Optional.empty(), List.of());
+                Optional.empty(),
+                List.of());
         ViscosityFit fit = ViscosityFit.of(made, Cross.FAMILY);
         assertEquals(9300, fit.law().zeroRateLimit(), 1e-3);
         assertTrue(fit.headline().contains("19 points used, 1 set aside"), fit.headline());
@@ -159,7 +181,8 @@ class ViscosityFitTest {
 
     @Test
     void refuses_too_few_points_and_rows_without_a_viscosity() {
-        assertThrows(RangeException.class, () -> ViscosityFit.of(curve(Doubles.of(1, 2), Doubles.of(3, 2)), Cross.FAMILY));
+        assertThrows(
+                RangeException.class, () -> ViscosityFit.of(curve(Doubles.of(1, 2), Doubles.of(3, 2)), Cross.FAMILY));
         assertThrows(
                 RangeException.class,
                 () -> ViscosityFit.of(curve(Doubles.of(1, 2, 3), Doubles.of(3, -2, 1)), Newtonian.FAMILY));
