@@ -15,6 +15,7 @@ public final class Figure {
     private final Axis x;
     private final Axis y;
     private final List<Layer> layers;
+    private final List<Integer> families;
 
     private Figure(Builder builder) {
         this.title = builder.title;
@@ -22,6 +23,7 @@ public final class Figure {
         this.x = builder.x;
         this.y = builder.y;
         this.layers = List.copyOf(builder.layers);
+        this.families = List.copyOf(builder.families);
     }
 
     /** A figure to be filled layer by layer; both axes are logarithmic unless said otherwise. */
@@ -52,6 +54,16 @@ public final class Figure {
     /** What is drawn, from back to front. */
     public List<Layer> layers() {
         return layers;
+    }
+
+    /**
+     * The family of a layer: layers of one family, such as measured points and their fit, share a colour. Families are
+     * counted from zero in the order in which they begin.
+     *
+     * @param layer place of the layer in {@link #layers()}, counted from zero
+     */
+    public int family(int layer) {
+        return families.get(layer);
     }
 
     /** Every number of the figure, one row a point: layer, x, y and the ends of bar or band. */
@@ -97,6 +109,8 @@ public final class Figure {
         private Axis x;
         private Axis y;
         private final List<Layer> layers = new ArrayList<>();
+        private final List<Integer> families = new ArrayList<>();
+        private boolean joining;
 
         private Builder(String title) {
             this.title = Objects.requireNonNull(title, "title");
@@ -158,7 +172,24 @@ public final class Figure {
 
         /** Adds a layer in front of the others. */
         public Builder layer(Layer layer) {
+            int last = families.isEmpty() ? -1 : families.get(families.size() - 1);
+            families.add(joining ? last : last + 1);
             layers.add(layer);
+            joining = false;
+            return this;
+        }
+
+        /**
+         * Puts the next layer into the family of the layer before it, so that both have one colour:
+         * {@code marks("A-00", ...).likeBefore().line("A-00, Cross", ...)}.
+         *
+         * @throws RangeException if there is no layer yet
+         */
+        public Builder likeBefore() {
+            if (layers.isEmpty()) {
+                throw new RangeException("figure '" + title + "' has no layer yet that the next one could be like");
+            }
+            joining = true;
             return this;
         }
 
