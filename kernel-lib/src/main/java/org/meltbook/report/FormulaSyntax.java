@@ -28,6 +28,7 @@ import org.commonmark.parser.block.ParserState;
  */
 final class FormulaSyntax implements Parser.ParserExtension {
     private static final String FENCE = "$$";
+    private static final char CODE = '`';
 
     /** A formula in the line. */
     static final class Inline extends CustomNode {
@@ -90,14 +91,15 @@ final class FormulaSyntax implements Parser.ParserExtension {
                 Position end = scanner.position();
                 int before = scanner.peekPreviousCodePoint();
                 int found = scanner.matchMultiple('$');
-                boolean digit = scanner.hasNext() && Character.isDigit(scanner.peek());
-                boolean closes = fence == 2 || (!Character.isWhitespace(before) && !digit);
-                if (found == fence && before != '\\' && closes) {
-                    String tex = scanner.getSource(start, end).getContent();
-                    return tex.isBlank()
-                            ? ParsedInline.none()
-                            : ParsedInline.of(new Inline(tex, fence == 2), scanner.position());
+                if (before == '\\') {
+                    continue;
                 }
+                boolean digit = scanner.hasNext() && Character.isDigit(scanner.peek());
+                boolean closes = found == fence && (fence == 2 || !Character.isWhitespace(before) && !digit);
+                String tex = scanner.getSource(start, end).getContent();
+                return closes && !tex.isBlank() && tex.indexOf(CODE) < 0
+                        ? ParsedInline.of(new Inline(tex, fence == 2), scanner.position())
+                        : ParsedInline.none();
             }
             return ParsedInline.none();
         }
