@@ -24,11 +24,13 @@ public sealed interface Block {
     /**
      * A picture.
      *
-     * @param mime   {@code image/png} or another image type
-     * @param base64 its bytes
-     * @param text   what it shows, for those who cannot see it
+     * @param mime    {@code image/png} or another image type
+     * @param base64  its bytes
+     * @param text    what it shows, for those who cannot see it
+     * @param caption the sentence below it; blank for none
+     * @param width   how wide to show it in CSS pixels, where there is room; 0 for its own width
      */
-    record Picture(String mime, String base64, String text) implements Block {}
+    record Picture(String mime, String base64, String text, String caption, int width) implements Block {}
 
     /** What printed text is. */
     enum Kind {

@@ -70,10 +70,16 @@ public final class Page {
         } else if (block instanceof Block.Rich rich) {
             return "<div class=\"rich\">\n" + rich.html().stripTrailing() + "\n</div>\n";
         }
-        Block.Picture picture = (Block.Picture) block;
+        return picture((Block.Picture) block);
+    }
+
+    private static String picture(Block.Picture picture) {
+        String width = picture.width() > 0 ? " width=\"" + picture.width() + "\"" : "";
+        String caption =
+                picture.caption().isBlank() ? "" : "<figcaption>" + Html.escape(picture.caption()) + "</figcaption>";
         return "<figure class=\"picture\"><img src=\"data:" + Html.escape(picture.mime()) + ";base64,"
                 + Html.escape(picture.base64().replaceAll("\\s", "")) + "\" alt=\"" + Html.escape(picture.text())
-                + "\"></figure>\n";
+                + "\"" + width + ">" + caption + "</figure>\n";
     }
 
     private static String style() {
