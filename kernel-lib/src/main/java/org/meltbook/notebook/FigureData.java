@@ -74,17 +74,34 @@ final class FigureData {
             }
             return Optional.empty();
         }
-        return same(expected, found)
-                ? Optional.empty()
-                : Optional.of(new Difference(path, Objects.toString(expected), Objects.toString(found)));
+        return inText(path, Objects.toString(expected), Objects.toString(found));
     }
 
-    private static boolean same(Object expected, Object found) {
-        if (expected instanceof Number a && found instanceof Number b) {
-            double larger = Math.max(Math.abs(a.doubleValue()), Math.abs(b.doubleValue()));
-            return Math.abs(a.doubleValue() - b.doubleValue()) <= TOLERANCE * larger;
+    /** Texts are held against each other word by word, numbers among them within rounding. */
+    private static Optional<Difference> inText(String path, String expected, String found) {
+        String[] before = expected.split(" ");
+        String[] now = found.split(" ");
+        for (int i = 0; i < Math.max(before.length, now.length); i++) {
+            String a = i < before.length ? before[i] : "nothing";
+            String b = i < now.length ? now[i] : "nothing";
+            if (!same(a, b)) {
+                return Optional.of(new Difference(path + ", place " + (i + 1), a, b));
+            }
         }
-        return Objects.equals(expected, found);
+        return Optional.empty();
+    }
+
+    private static boolean same(String expected, String found) {
+        if (expected.equals(found)) {
+            return true;
+        }
+        try {
+            double a = Double.parseDouble(expected);
+            double b = Double.parseDouble(found);
+            return Math.abs(a - b) <= TOLERANCE * Math.max(Math.abs(a), Math.abs(b));
+        } catch (NumberFormatException e) {
+            return false;
+        }
     }
 
     private static Map<String, Object> axis(Axis axis) {
@@ -120,13 +137,14 @@ final class FigureData {
         }
     }
 
-    /** Numbers as JSON can hold them: what is not finite becomes text. */
-    private static List<Object> numbers(Doubles values) {
+    /** Numbers in one line of text, so that a figure takes a few lines of the notebook's file. */
+    private static String numbers(Doubles values) {
         return values.stream()
                 .mapToObj(v -> Double.isFinite(v)
-                        ? (Object) new BigDecimal(v).round(DIGITS).doubleValue()
-                        : Double.toString(v))
-                .toList();
+                        ? String.valueOf(new BigDecimal(v).round(DIGITS).doubleValue())
+                        : String.valueOf(v))
+                .map(text -> text.endsWith(".0") ? text.substring(0, text.length() - 2) : text)
+                .collect(Collectors.joining(" "));
     }
 
     /** One place where figures differ. */

@@ -23,6 +23,8 @@ public final class Formulas {
 
     private static final Pattern WORD = Pattern.compile("\\\\([A-Za-z]+)");
     private static final Pattern PRIMES = Pattern.compile("(?<!\\\\)('+)");
+    /** A word of style with its argument: braces around both keep the style from reaching what follows. */
+    private static final Pattern STYLED = Pattern.compile("\\\\math(?:bf|rm|sf|it)\\{[^{}]*\\}");
     private static final Pattern BRACED = Pattern.compile("\\\\(?:mbox|textrm)\\{[^{}]*\\}");
 
     private final SnuggleEngine engine = new SnuggleEngine();
@@ -72,6 +74,7 @@ public final class Formulas {
     private static String inKnownWords(String tex) {
         String words = WORD.matcher(tex)
                 .replaceAll(m -> Matcher.quoteReplacement(SAME.getOrDefault(m.group(1), m.group())));
+        words = STYLED.matcher(words).replaceAll(m -> Matcher.quoteReplacement("{" + m.group() + "}"));
         StringBuilder text = new StringBuilder();
         Matcher braced = BRACED.matcher(words);
         int from = 0;

@@ -18,6 +18,8 @@ final class MathMl {
             "\u0307", "\u02D9", "\u0308", "\u00A8", "\u0302", "^", "\u0303", "~", "\u20D7", "\u2192", "-", "\u2212");
     private static final Set<String> FUNCTIONS = Set.of(
             "sin", "cos", "tan", "sinh", "cosh", "tanh", "arctan", "ln", "log", "exp", "max", "min", "lim", "tr", "det");
+    private static final Set<String> TALL = Set.of("mfrac", "mtable", "munder", "munderover", "msqrt", "mroot");
+    private static final int PRIME = '\u2032';
     private static final String THIN = "0.167em";
 
     private MathMl() {}
@@ -35,6 +37,7 @@ final class MathMl {
             case "mstyle" -> style(element);
             case "mo", "mn" -> characters(element);
             case "mi" -> function(element);
+            case "msup", "msubsup" -> prime(element);
             default -> {}
         }
     }
@@ -55,7 +58,9 @@ final class MathMl {
     /** {@code mfenced} was dropped from browsers, and with it the brackets: they become operators in a row. */
     private static void fence(Element fenced) {
         Element row = make(fenced, "mrow", "");
-        operator(row, fenced.getAttribute("open"), true);
+        List<Element> tall = new ArrayList<>();
+        TALL.forEach(name -> collect(fenced, name, tall));
+        operator(row, fenced.getAttribute("open"), "prefix", !tall.isEmpty());
         boolean first = true;
         for (Node child : children(fenced)) {
             if (!first) {
@@ -64,17 +69,21 @@ final class MathMl {
             row.appendChild(child);
             first = false;
         }
-        operator(row, fenced.getAttribute("close"), false);
+        operator(row, fenced.getAttribute("close"), "postfix", !tall.isEmpty());
         fenced.getParentNode().replaceChild(row, fenced);
     }
 
-    private static void operator(Element row, String text, boolean opens) {
+    private static void operator(Element row, String text, String form, boolean tall) {
         if (text.isEmpty()) {
             return;
         }
         Element operator = make(row, "mo", text);
         operator.setAttribute("fence", "true");
-        operator.setAttribute("form", opens ? "prefix" : "postfix");
+        operator.setAttribute("form", form);
+        if (!tall) {
+            // Around letters a bracket of letter height looks right; browsers would take the next larger one.
+            operator.setAttribute("stretchy", "false");
+        }
         row.appendChild(operator);
     }
 
@@ -112,6 +121,28 @@ final class MathMl {
         } else if (name(element).equals("mn") && text.startsWith("-")) {
             element.setTextContent("\u2212" + text.substring(1));
         }
+    }
+
+    /** Primes are letters at full height, as in print: as exponents browsers make them too small to see. */
+    private static void prime(Element power) {
+        List<Node> parts = children(power);
+        int count = (int) parts.get(parts.size() - 1).getTextContent().codePoints().filter(c -> c == PRIME).count();
+        if (count == 0 || count > 3 || parts.get(parts.size() - 1).getTextContent().length() != count) {
+            return;
+        }
+        Element mark = make(power, "mo", "\u2032\u2033\u2034".substring(count - 1, count));
+        mark.setAttribute("lspace", "0");
+        mark.setAttribute("rspace", "0");
+        Element row = make(power, "mrow", "");
+        row.appendChild(parts.get(0));
+        row.appendChild(mark);
+        Element whole = row;
+        if (parts.size() == 3) {
+            whole = make(power, "msub", "");
+            whole.appendChild(row);
+            whole.appendChild(parts.get(1));
+        }
+        power.getParentNode().replaceChild(whole, power);
     }
 
     /** A function's name stands apart from what it is taken of: tan δ. */

@@ -4,6 +4,7 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
+import java.util.Base64;
 import java.util.List;
 import java.util.Objects;
 
@@ -52,7 +53,7 @@ public final class Page {
                 + "<meta http-equiv=\"Content-Security-Policy\" content=\"" + POLICY + "\">\n"
                 + "<meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n"
                 + "<meta name=\"color-scheme\" content=\"light dark\">\n"
-                + "<title>" + Html.escape(title) + "</title>\n<style>\n" + style() + "</style>\n</head>\n<body>\n" + body
+                + "<title>" + Html.escape(title) + "</title>\n<style>\n" + style(body.contains("<math")) + "</style>\n</head>\n<body>\n" + body
                 + "</body>\n</html>\n";
     }
 
@@ -82,11 +83,21 @@ public final class Page {
                 + "\"" + width + ">" + caption + "</figure>\n";
     }
 
-    private static String style() {
-        try (InputStream in = Objects.requireNonNull(Page.class.getResourceAsStream("page.css"), "page.css")) {
-            return new String(in.readAllBytes(), StandardCharsets.UTF_8);
+    /** The style sheet; the font for formulas comes along only where there is one. */
+    private static String style(boolean formulas) {
+        String sheet = new String(resource("page.css"), StandardCharsets.UTF_8);
+        return formulas
+                ? "@font-face { font-family: \"Meltbook Formula\"; src: url(data:font/woff2;base64,"
+                        + Base64.getEncoder().encodeToString(resource("formula.woff2")) + ") format(\"woff2\"); }\n"
+                        + sheet
+                : sheet;
+    }
+
+    private static byte[] resource(String name) {
+        try (InputStream in = Objects.requireNonNull(Page.class.getResourceAsStream(name), name)) {
+            return in.readAllBytes();
         } catch (IOException e) {
-            throw new UncheckedIOException("reading page.css from the program itself", e);
+            throw new UncheckedIOException("reading " + name + " from the program itself", e);
         }
     }
 }
