@@ -107,14 +107,19 @@ public final class Attachment {
             throw new AttachmentException("cannot attach: there is no jar " + jar.toAbsolutePath());
         }
         boolean replaced = isOurs();
-        refuseStrangers(replaced);
+        if (!replaced && Files.exists(folder)) {
+            throw new AttachmentException(
+                    "cannot attach: " + folder + " exists and was not made by attach; move it away");
+        }
         Path aside = folder.resolveSibling("." + KERNEL + "-" + ProcessHandle.current().pid());
         try {
             Files.createDirectories(aside);
             Files.copy(jar, aside.resolve(JAR), StandardCopyOption.REPLACE_EXISTING);
             Files.writeString(aside.resolve(SPEC), spec(maxHeap), StandardCharsets.UTF_8);
-            removeOurFiles(folder);
-            Files.move(aside, folder);
+            Files.createDirectories(folder);
+            // The spec comes last: without it Jupyter does not see the kernel.
+            moved(aside.resolve(JAR), folder.resolve(JAR));
+            moved(aside.resolve(SPEC), folder.resolve(SPEC));
         } catch (IOException | UncheckedIOException e) {
             throw new AttachmentException("cannot attach: " + folder + " cannot be written: " + reason(e), e);
         } finally {
@@ -145,12 +150,6 @@ public final class Attachment {
 
     private boolean isOurs() {
         return Files.isRegularFile(folder.resolve(SPEC)) && Files.isRegularFile(folder.resolve(JAR));
-    }
-
-    private void refuseStrangers(boolean ours) {
-        if (!ours && Files.exists(folder)) {
-            throw new AttachmentException("cannot attach: " + folder + " exists and was not made by attach; move it away");
-        }
     }
 
     private String spec(String maxHeap) {
@@ -198,9 +197,13 @@ public final class Attachment {
         try {
             removeOurFiles(aside);
         } catch (IOException e) {
-            // What is left there is a hidden folder that the next attachment overwrites; the first failure counts.
-            assert e != null;
+            // What is left is a hidden folder without meaning to Jupyter; the first failure, if any, is the one to tell.
+            return;
         }
+    }
+
+    private static void moved(Path from, Path to) throws IOException {
+        Files.move(from, to, StandardCopyOption.REPLACE_EXISTING, StandardCopyOption.ATOMIC_MOVE);
     }
 
     private static Optional<Path> folderNamed(Map<String, String> environment, String variable) {

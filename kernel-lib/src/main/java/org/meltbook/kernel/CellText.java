@@ -52,6 +52,19 @@ record CellText(String text) {
         return masked(text).stripTrailing().endsWith(";");
     }
 
+    /** Where a comment starts that has no end; -1 if there is none. */
+    static int openComment(String text) {
+        int at = 0;
+        while (at < text.length()) {
+            if (text.startsWith("/*", at) && text.indexOf("*/", at + 2) < 0) {
+                return at;
+            }
+            int end = endOfComment(text, at);
+            at = Math.max(end > at ? end : endOfLiteral(text, at), at + 1);
+        }
+        return -1;
+    }
+
     private static int endOfComment(String text, int at) {
         if (text.startsWith("//", at)) {
             int end = text.indexOf('\n', at);

@@ -53,6 +53,19 @@ final class Failures {
         return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, line, report);
     }
 
+    /** A part of a cell that never ends. */
+    Outcome.Failed unfinished(Origin origin) {
+        int open = CellText.openComment(origin.cell.text());
+        int at = open < 0 ? origin.offset : open;
+        String message = open < 0 ? "this is not a whole statement" : "this comment has no end";
+        return new Outcome.Failed(
+                Outcome.Reason.COMPILE,
+                "CompileError",
+                message,
+                origin.cell.lineAt(at),
+                pointed(origin.cell, at, message));
+    }
+
     /** A declaration that needs something which the whole cell did not declare. */
     Outcome.Failed unresolved(DeclarationSnippet snippet, Origin origin) {
         List<String> missing = shell.unresolvedDependencies(snippet).toList();

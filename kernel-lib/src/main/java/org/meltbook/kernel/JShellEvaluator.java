@@ -1,10 +1,13 @@
 package org.meltbook.kernel;
 
 import java.io.File;
+import java.util.ArrayDeque;
 import java.util.ArrayList;
 import java.util.Comparator;
+import java.util.Deque;
 import java.util.List;
 import java.util.Optional;
+import java.util.concurrent.atomic.AtomicBoolean;
 import java.util.stream.Stream;
 import jdk.jshell.DeclarationSnippet;
 import jdk.jshell.JShell;
@@ -17,6 +20,7 @@ import jdk.jshell.SnippetEvent;
 import jdk.jshell.SourceCodeAnalysis;
 import jdk.jshell.SourceCodeAnalysis.CompletionInfo;
 import jdk.jshell.UnresolvedReferenceException;
+import jdk.jshell.VarSnippet;
 import org.meltbook.kernel.Failures.Origin;
 
 /**
@@ -32,6 +36,7 @@ public final class JShellEvaluator implements Evaluator {
     private final Failures failures;
     private final Inspection inspection;
     private final CellStreams streams;
+    private final AtomicBoolean open = new AtomicBoolean(true);
     private Optional<Cell.Stage> stage = Optional.empty();
     private int cells;
 
@@ -44,6 +49,7 @@ public final class JShellEvaluator implements Evaluator {
         failures = new Failures(shell, settings.speaksForItself());
         inspection = new Inspection(shell, loader.classes());
         streams = new CellStreams();
+        ExitGuard.raise();
     }
 
     /**
@@ -78,17 +84,16 @@ public final class JShellEvaluator implements Evaluator {
     }
 
     private Outcome runPieces(CellText cell, int number) {
-        List<Origin> pieces = new ArrayList<>();
-        Optional<Origin> broken = split(cell, number, pieces);
-        if (broken.isPresent()) {
+        Parts parts = split(cell, number);
+        if (parts.broken.isPresent()) {
             // Nothing of a cell runs if a part of it cannot be read.
-            return refusal(broken.get());
+            return refusal(parts.broken.get());
         }
         List<Declared> declared = new ArrayList<>();
         Optional<MimeBundle> result = Optional.empty();
-        for (int i = 0; i < pieces.size(); i++) {
-            int end = i + 1 < pieces.size() ? pieces.get(i + 1).offset() : cell.text().length();
-            Step step = runPiece(pieces.get(i), end, declared);
+        Deque<Piece> waiting = new ArrayDeque<>(parts.pieces);
+        while (!waiting.isEmpty()) {
+            Step step = runPiece(next(waiting, declared), waiting.isEmpty(), declared);
             if (step.failure.isPresent()) {
                 return step.failure.get();
             }
@@ -97,64 +102,82 @@ public final class JShellEvaluator implements Evaluator {
         return unresolved(declared).map(Outcome.class::cast).orElse(new Outcome.Done(result));
     }
 
-    /** Fills {@code pieces} with the cell's snippets; gives the rest that cannot be read, if there is one. */
-    private Optional<Origin> split(CellText cell, int number, List<Origin> pieces) {
+    /** The next piece in order; but while a declaration still needs something, declarations come before statements. */
+    private Piece next(Deque<Piece> waiting, List<Declared> declared) {
+        if (waiting.size() > 1 && declared.stream().anyMatch(d -> isOpen(shell.status(d.snippet)))) {
+            Optional<Piece> declaration = waiting.stream().filter(this::declares).findFirst();
+            if (declaration.isPresent()) {
+                waiting.remove(declaration.get());
+                return declaration.get();
+            }
+        }
+        return waiting.removeFirst();
+    }
+
+    private boolean declares(Piece piece) {
+        return analysis.sourceToSnippets(piece.source).stream()
+                .allMatch(s -> s.kind() == Kind.TYPE_DECL || s.kind() == Kind.METHOD);
+    }
+
+    /** The cell's snippets, and the rest that cannot be read, if there is one. */
+    private Parts split(CellText cell, int number) {
+        List<Piece> pieces = new ArrayList<>();
         int offset = CellText.firstCode(cell.text());
         while (offset < cell.text().length()) {
-            Origin piece = new Origin(number, cell, offset);
+            Origin origin = new Origin(number, cell, offset);
             String rest = cell.text().substring(offset);
             CompletionInfo info = analysis.analyzeCompletion(rest);
             if (isUnreadable(rest, info)) {
-                return Optional.of(piece);
+                return new Parts(pieces, Optional.of(origin));
             }
-            pieces.add(piece);
             boolean whole = info.completeness() == SourceCodeAnalysis.Completeness.CONSIDERED_INCOMPLETE;
-            int next = cell.text().length() - (whole ? 0 : info.remaining().length());
-            offset = next + CellText.firstCode(cell.text().substring(next));
+            int end = cell.text().length() - (whole ? 0 : info.remaining().length());
+            boolean silent = CellText.endsWithSemicolon(cell.text().substring(offset, end));
+            pieces.add(new Piece(origin, whole ? rest : info.source(), silent));
+            offset = end + CellText.firstCode(cell.text().substring(end));
         }
-        return Optional.empty();
+        return new Parts(pieces, Optional.empty());
     }
 
     private boolean isUnreadable(String rest, CompletionInfo info) {
         return switch (info.completeness()) {
             case COMPLETE, COMPLETE_WITH_SEMI, EMPTY -> false;
             case DEFINITELY_INCOMPLETE -> true;
-            case CONSIDERED_INCOMPLETE, UNKNOWN -> analysis.sourceToSnippets(rest).stream()
-                    .anyMatch(s -> s.kind() == Kind.ERRONEOUS);
+            case CONSIDERED_INCOMPLETE, UNKNOWN -> isErroneous(rest);
         };
     }
 
-    private Outcome refusal(Origin broken) {
-        List<SnippetEvent> events = shell.eval(broken.cell().text().substring(broken.offset()));
-        return events.stream()
-                .filter(e -> e.status() == Status.REJECTED)
-                .findFirst()
-                .map(e -> failures.refused(e.snippet(), broken))
-                .orElseThrow(() -> new IllegalStateException("read as broken, and yet it ran: " + events));
+    private boolean isErroneous(String source) {
+        return analysis.sourceToSnippets(source).stream().anyMatch(s -> s.kind() == Kind.ERRONEOUS);
     }
 
-    private Step runPiece(Origin piece, int end, List<Declared> declared) {
-        String source = piece.cell().text().substring(piece.offset(), end);
-        boolean last = end == piece.cell().text().length();
+    private Outcome refusal(Origin broken) {
+        String rest = broken.cell().text().substring(broken.offset());
+        if (!isErroneous(rest)) {
+            // The compiler would run what stands before the part that never ends.
+            return failures.unfinished(broken);
+        }
+        return failures.refused(shell.eval(rest).get(0).snippet(), broken);
+    }
+
+    private Step runPiece(Piece piece, boolean last, List<Declared> declared) {
         control.clear();
-        SnippetEvent event = shell.eval(source).stream()
+        SnippetEvent event = shell.eval(piece.source).stream()
                 .filter(e -> e.causeSnippet() == null)
                 .findFirst()
-                .orElseThrow(() -> new IllegalStateException("nothing to run in: " + source));
-        failures.remember(event.snippet(), piece);
-        Optional<Outcome.Failed> failure = failureOf(event, piece);
+                .orElseThrow(() -> new IllegalStateException("nothing to run in: " + piece.source));
+        failures.remember(event.snippet(), piece.origin);
         boolean temporary = event.snippet().subKind() == SubKind.TEMP_VAR_EXPRESSION_SUBKIND;
         try {
+            Optional<Outcome.Failed> failure = failureOf(event, piece.origin);
             if (failure.isPresent()) {
                 return new Step(failure, Optional.empty());
             }
             if (event.snippet() instanceof DeclarationSnippet declaration) {
-                declared.add(new Declared(declaration, piece));
+                declared.add(new Declared(declaration, piece.origin));
             }
-            boolean shown = last
-                    && (temporary || event.snippet().kind() == Kind.EXPRESSION)
-                    && !CellText.endsWithSemicolon(source);
-            return shown ? shown(event, piece) : new Step(failure, Optional.empty());
+            boolean expression = temporary || event.snippet().kind() == Kind.EXPRESSION;
+            return last && expression && !piece.silent ? shown(event, piece.origin) : Step.QUIET;
         } finally {
             if (temporary) {
                 drop(event);
@@ -166,7 +189,7 @@ public final class JShellEvaluator implements Evaluator {
     /** JShell gives each bare expression a variable, and each variable slows all later cells. */
     private void drop(SnippetEvent event) {
         if (event.status() == Status.VALID) {
-            control.release(((jdk.jshell.VarSnippet) event.snippet()).name());
+            control.release(((VarSnippet) event.snippet()).name());
             shell.drop(event.snippet());
         }
     }
@@ -191,7 +214,7 @@ public final class JShellEvaluator implements Evaluator {
     private Step shown(SnippetEvent event, Origin piece) {
         Optional<InProcessControl.Value> value = control.take(event.value());
         if (value.isEmpty()) {
-            return new Step(Optional.empty(), Optional.empty());
+            return Step.QUIET;
         }
         try {
             run.enterCellCode();
@@ -247,8 +270,8 @@ public final class JShellEvaluator implements Evaluator {
 
     @Override
     public Completeness completeness(String cell) {
-        List<Origin> pieces = new ArrayList<>();
-        return split(new CellText(cell), 0, pieces)
+        return split(new CellText(cell), 0)
+                .broken
                 .map(rest -> switch (analysis.analyzeCompletion(cell.substring(rest.offset())).completeness()) {
                     case DEFINITELY_INCOMPLETE, CONSIDERED_INCOMPLETE -> Completeness.INCOMPLETE;
                     default -> Completeness.INVALID;
@@ -258,9 +281,12 @@ public final class JShellEvaluator implements Evaluator {
 
     @Override
     public void close() {
-        stage.ifPresent(Cell::leave);
-        streams.close();
-        shell.close();
+        if (open.getAndSet(false)) {
+            ExitGuard.lower();
+            stage.ifPresent(Cell::leave);
+            streams.close();
+            shell.close();
+        }
     }
 
     /** Variables that bare expressions left behind; none in a healthy session. */
@@ -271,7 +297,18 @@ public final class JShellEvaluator implements Evaluator {
                 .count();
     }
 
+    /**
+     * One snippet of a cell.
+     *
+     * @param silent whether it ends with a semicolon, so that its value is not shown
+     */
+    private record Piece(Origin origin, String source, boolean silent) {}
+
+    private record Parts(List<Piece> pieces, Optional<Origin> broken) {}
+
     private record Declared(DeclarationSnippet snippet, Origin origin) {}
 
-    private record Step(Optional<Outcome.Failed> failure, Optional<MimeBundle> result) {}
+    private record Step(Optional<Outcome.Failed> failure, Optional<MimeBundle> result) {
+        static final Step QUIET = new Step(Optional.empty(), Optional.empty());
+    }
 }

@@ -106,7 +106,7 @@ class JShellEvaluatorTest {
     @Test
     void streams_what_a_cell_prints_while_it_runs() throws InterruptedException {
         Collected own = new Collected();
-        String wait = "System.out.println(\"γ̇ in 1/s\");\nSystem.err.print(\"careful\");\n"
+        String wait = "System.err.print(\"careful\");\nSystem.out.println(\"γ̇ in 1/s\");\n"
                 + "while (!Thread.interrupted()) Thread.onSpinWait();";
         Thread cell = new Thread(() -> evaluator.run(wait, own));
         cell.start();
@@ -165,6 +165,17 @@ class JShellEvaluatorTest {
                         + "int even(int n) { return n == 0 ? 0 : 1 + odd(n - 1); }\n"
                         + "int odd(int n) { return n == 0 ? 0 : 1 + even(n - 1); }\n"
                         + "var egg = new Hen().lay().hatch().lay();\neven(5)"));
+    }
+
+    @Test
+    void takes_a_declaration_that_is_used_before_what_it_needs() {
+        assertEquals("ok", result("class Early { Late late; }\nvar early = new Early();\nclass Late {}\n\"ok\""));
+    }
+
+    @Test
+    void takes_a_statement_that_ends_with_a_comment() {
+        assertTrue(givesNothing("int ended = 3 // 1/s"));
+        assertEquals("4", result("/* first */ ended + 1 /* last */"));
     }
 
     @Test
