@@ -6,6 +6,7 @@ import java.awt.Graphics2D;
 import java.awt.geom.Line2D;
 import java.awt.geom.Rectangle2D;
 import java.util.List;
+import org.knowm.xchart.internal.chartpart.TexRenderer;
 import org.knowm.xchart.style.XYStyler;
 
 /** Draws grid, frame, ticks, labels and titles of both axes of a chart, and keeps the room that they need. */
@@ -34,7 +35,12 @@ final class AxisPainter {
         double title = styler.getAxisTitleFont().getSize2D();
         double below = GAP + labelFont().getSize2D() + (chart.getXAxisTitle().isBlank() ? 0 : TITLE_GAP + title);
         styler.setPlotMargin((int) Math.ceil(below));
-        double plotHeight = chart.getHeight() - 3.5 * styler.getChartPadding() - below - legendHeight;
+        double above = chart.getTitle().isBlank()
+                ? 0
+                : TexRenderer.getBounds(chart.getTitle(), styler.getChartTitleFont()).getHeight()
+                        + 2 * styler.getChartTitlePadding();
+        double plotHeight =
+                chart.getHeight() - 2 * styler.getChartPadding() - above - styler.getPlotMargin() - legendHeight;
         double labels = yTicks(plotHeight).stream()
                 .mapToDouble(tick -> Lettering.width(tick.label(), labelFont()))
                 .max()
@@ -54,7 +60,7 @@ final class AxisPainter {
     List<Tick> yTicks(double length) {
         XYStyler styler = chart.getStyler();
         Scale scale = new Scale(styler.getYAxisMin(), styler.getYAxisMax(), styler.isYAxisLogarithmic());
-        return new Ticks(scale, length, label -> 1.4 * labelFont().getSize2D()).choose();
+        return new Ticks(scale, length, label -> 1.15 * labelFont().getSize2D()).choose();
     }
 
     /** Draws the grid: light lines at labelled ticks. */
@@ -95,11 +101,13 @@ final class AxisPainter {
             double length = tick.labelled() ? MAJOR : MINOR;
             g.draw(new Line2D.Double(x, frame.getMaxY(), x, frame.getMaxY() - length));
             g.draw(new Line2D.Double(x, frame.getMinY(), x, frame.getMinY() + length));
-            Lettering.draw(g, tick.label(), labelFont(), 0.5, exact, baseline);
+            double half = Lettering.width(tick.label(), labelFont()) / 2;
+            Lettering.draw(g, tick.label(), labelFont(), 0.5, Math.min(exact, chart.getWidth() - 3 - half), baseline);
         }
         Font font = chart.getStyler().getAxisTitleFont();
         double titleLine = baseline + TITLE_GAP + font.getSize2D();
-        Lettering.draw(g, fitting(chart.getXAxisTitle(), font, frame), font, 0.5, frame.getCenterX(), titleLine);
+        String title = Lettering.within(chart.getXAxisTitle(), font, frame.getWidth());
+        Lettering.draw(g, title, font, 0.5, frame.getCenterX(), titleLine);
     }
 
     private void paintY(Graphics2D g, Rectangle2D frame, List<Tick> ticks) {
@@ -114,12 +122,9 @@ final class AxisPainter {
         }
         Font font = chart.getStyler().getAxisTitleFont();
         double titleLine = chart.getStyler().getChartPadding() + font.getSize2D() * 0.8;
-        Lettering.drawUpwards(g, Lettering.within(chart.getYAxisTitle(), font, chart.getHeight() * 0.9), font,
-                titleLine, frame.getCenterY());
-    }
-
-    private static String fitting(String title, Font font, Rectangle2D frame) {
-        return Lettering.within(title, font, frame.getWidth());
+        String title = Lettering.within(chart.getYAxisTitle(), font, 0.96 * chart.getHeight());
+        double half = Lettering.width(title, font) / 2;
+        Lettering.drawUpwards(g, title, font, titleLine, Math.max(frame.getCenterY(), half + 3));
     }
 
     private Font labelFont() {

@@ -19,12 +19,12 @@ import org.meltbook.figure.Figure;
 import org.meltbook.figure.Layer;
 
 /**
- * A figure drawn: as picture, as chart of the chart library, and in words. The same figure gives the same bytes in every
- * locale, with or without fonts on the machine.
+ * A figure drawn: as picture, as chart of the chart library, and in words. The same figure gives the same bytes in
+ * every locale, with or without fonts on the machine.
  *
- * <p>Measured points are markers, models are lines, intervals are bands. Layers of one {@linkplain Figure#family family}
- * share a colour; a layer with a blank name is not in the legend. No number makes a drawing fail: what an axis cannot show
- * is moved to its edge or left out, and counted in {@link #caption()}.
+ * <p>Measured points are markers, models are lines, intervals are bands. Layers of one {@linkplain Figure#family
+ * family} share a colour; a layer with a blank name joins the legend entry of its family. No number makes a drawing
+ * fail: what an axis cannot show is moved to its edge or left out, and counted in {@link #caption()}.
  */
 public final class Drawing {
     private final Figure figure;
@@ -56,8 +56,8 @@ public final class Drawing {
     }
 
     /**
-     * A new chart of the chart library, to go on with: one series a layer under the name of the layer (with {@code (2)} and
-     * so on behind it if names repeat), on axes whose ends are set.
+     * A new chart of the chart library, to go on with: one series a layer under the name of the layer (with {@code
+     * (2)} and so on behind it if names repeat, {@code layer 3} if it is blank), on axes whose ends are set.
      */
     public XYChart chart() {
         FigureChart chart = new FigureChart(placement);
@@ -89,7 +89,7 @@ public final class Drawing {
     }
 
     private static XYSeries series(XYChart chart, Track track) {
-        String name = track.layer().name();
+        String name = track.layer().name().isBlank() ? "layer " + (track.index() + 1) : track.layer().name();
         String unique = name;
         for (int i = 2; chart.getSeries(unique) != null; i++) {
             unique = name + " (" + i + ")";
@@ -151,8 +151,12 @@ public final class Drawing {
     private static String inWords(Layer layer) {
         if (layer instanceof Layer.Marks marks) {
             int points = marks.x().size();
-            return layer.name() + " (" + points + (points == 1 ? " measured point)" : " measured points)");
+            return name(layer) + " (" + points + (points == 1 ? " measured point)" : " measured points)");
         }
-        return layer.name() + (layer instanceof Layer.Band ? " (band)" : " (line)");
+        return name(layer) + (layer instanceof Layer.Band ? " (band)" : " (line)");
+    }
+
+    private static String name(Layer layer) {
+        return layer.name().isBlank() ? "unnamed" : layer.name();
     }
 }

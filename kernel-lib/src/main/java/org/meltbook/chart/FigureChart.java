@@ -11,10 +11,10 @@ import org.knowm.xchart.style.Styler.LegendPosition;
 import org.knowm.xchart.style.XYStyler;
 
 /**
- * A chart of the chart library in our theme. The library keeps the series and their styles, knows where each number lies,
- * and draws markers, lines and bands. What it cannot do is drawn here: exact ticks with decade labels, minor ticks, a grid
- * at labelled ticks only, error bars with two lengths, dashes along a curve, signs at the edge, and a legend of several
- * columns below the picture.
+ * A chart of the chart library in our theme. The library keeps the series and their styles, knows where each number
+ * lies, and draws markers, lines and bands. What it cannot do is drawn here: exact ticks with decade labels, minor
+ * ticks, a grid at labelled ticks only, error bars with two lengths, dashes along a curve, signs at the edge, and a
+ * legend of several columns below the picture.
  */
 final class FigureChart extends XYChart {
     static final int WIDTH = 720;
@@ -24,7 +24,7 @@ final class FigureChart extends XYChart {
     private static final double SMALLEST_TITLE = 11;
     private static final double AXIS_TITLE_SIZE = 13.5;
     private static final double LABEL_SIZE = 12;
-    private static final int PADDING = 16;
+    private static final int PADDING = 14;
 
     private final List<EdgeMark> edgeMarks;
     private final List<String> remarks;
@@ -34,7 +34,7 @@ final class FigureChart extends XYChart {
     FigureChart(Placement placement) {
         super(WIDTH, HEIGHT);
         this.edgeMarks = List.copyOf(placement.edgeMarks());
-        this.remarks = placement.tracks().isEmpty() && edgeMarks.isEmpty() ? placement.remarks() : List.of();
+        this.remarks = placement.tracks().isEmpty() ? placement.remarks() : List.of();
         this.plot = new FigurePlot(this, axes, placement.bars());
         this.legend = underPlot;
         style(placement);
@@ -79,7 +79,7 @@ final class FigureChart extends XYChart {
         styler.setChartFontColor(Palette.INK);
         styler.setChartTitleFontColor(Palette.INK);
         styler.setChartTitleBoxVisible(false);
-        styler.setChartTitlePadding(4);
+        styler.setChartTitlePadding(8);
         styler.setChartPadding(PADDING);
         styler.setPlotBorderVisible(false);
         styler.setPlotGridLinesVisible(false);

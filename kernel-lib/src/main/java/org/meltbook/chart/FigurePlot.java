@@ -1,6 +1,7 @@
 package org.meltbook.chart;
 
 import java.awt.BasicStroke;
+import java.awt.Color;
 import java.awt.Graphics2D;
 import java.awt.Shape;
 import java.awt.geom.Line2D;
@@ -33,8 +34,10 @@ final class FigurePlot extends Plot_XY<XYStyler, XYSeries> {
         List<XYSeries> enabled = chart.getSeriesCollection().stream()
                 .filter(XYSeries::isEnabled)
                 .toList();
+        Color background = chart.getStyler().getPlotBackgroundColor();
         try {
             paintOnly(List.of(), enabled, g);
+            chart.getStyler().setPlotBackgroundColor(Palette.CLEAR);
             axes.paintGrid(g, getBounds());
             Shape clip = g.getClip();
             g.clip(getBounds());
@@ -42,14 +45,14 @@ final class FigurePlot extends Plot_XY<XYStyler, XYSeries> {
             g.setClip(clip);
             paintInOrder(g, enabled);
         } finally {
+            chart.getStyler().setPlotBackgroundColor(background);
             enabled.forEach(series -> series.setEnabled(true));
         }
         chart.paintFront(g, getBounds());
     }
 
-    /** The library draws a line point by point, so that dashes begin anew at each point; dashed lines are drawn here. */
+    /** The library draws a line point by point, so that dashes begin anew at each point; they are drawn here. */
     private void paintInOrder(Graphics2D g, List<XYSeries> enabled) {
-        chart.getStyler().setPlotBackgroundColor(Palette.CLEAR);
         List<XYSeries> run = new ArrayList<>();
         for (XYSeries series : enabled) {
             if (isDashed(series)) {
@@ -61,7 +64,6 @@ final class FigurePlot extends Plot_XY<XYStyler, XYSeries> {
             }
         }
         paintOnly(run, enabled, g);
-        chart.getStyler().setPlotBackgroundColor(Palette.PAPER);
     }
 
     /** Lets the library paint with only the given series. */

@@ -24,13 +24,14 @@ final class Mark extends Marker {
     }
 
     private static final BasicStroke OUTLINE = new BasicStroke(0.9f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
-    private static final BasicStroke OPEN_OUTLINE = new BasicStroke(1.4f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
+    private static final BasicStroke OPEN_OUTLINE =
+            new BasicStroke(1.4f, BasicStroke.CAP_ROUND, BasicStroke.JOIN_MITER);
 
-    private final Form form;
+    private final Form kind;
     private final boolean filled;
 
-    Mark(Form form, boolean filled) {
-        this.form = form;
+    Mark(Form kind, boolean filled) {
+        this.kind = kind;
         this.filled = filled;
     }
 
@@ -49,29 +50,33 @@ final class Mark extends Marker {
     @Override
     public void paint(Graphics2D g, double x, double y, int size) {
         Color colour = g.getColor();
-        Shape outline = AffineTransform.getTranslateInstance(x, y).createTransformedShape(shape(size / 2.0));
+        Shape form = AffineTransform.getTranslateInstance(x, y).createTransformedShape(shape(size / 2.0));
         g.setColor(filled ? colour : Palette.PAPER);
-        g.fill(outline);
-        g.setColor(filled ? darker(colour) : colour);
+        g.fill(form);
+        g.setColor(filled ? outline(colour) : colour);
         g.setStroke(filled ? OUTLINE : OPEN_OUTLINE);
-        g.draw(outline);
+        g.draw(form);
         g.setColor(colour);
     }
 
-    private static Color darker(Color colour) {
+    /** A tone that parts overlapping markers. */
+    private static Color outline(Color colour) {
+        if (colour.equals(Color.BLACK)) {
+            return Color.GRAY;
+        }
         return new Color(colour.getRed() * 7 / 10, colour.getGreen() * 7 / 10, colour.getBlue() * 7 / 10);
     }
 
     /** The outline around the origin, with the area of a circle of the given radius, roughly. */
     private Shape shape(double r) {
-        return switch (form) {
+        return switch (kind) {
             case CIRCLE -> new Ellipse2D.Double(-r, -r, 2 * r, 2 * r);
             case SQUARE -> new Rectangle2D.Double(-0.88 * r, -0.88 * r, 1.76 * r, 1.76 * r);
             case TRIANGLE -> ring(3, 1.35 * r, 1.35 * r, -Math.PI / 2);
             case DIAMOND -> ring(4, 1.25 * r, 1.25 * r, -Math.PI / 2);
             case PENTAGON -> ring(5, 1.12 * r, 1.12 * r, -Math.PI / 2);
             case CROSS -> cross(1.2 * r, 0.42 * r);
-            case STAR -> ring(10, 1.5 * r, 0.68 * r, -Math.PI / 2);
+            case STAR -> ring(10, 1.4 * r, 0.66 * r, -Math.PI / 2);
         };
     }
 

@@ -8,8 +8,8 @@ import org.meltbook.figure.Layer;
 /**
  * Colours that readers with any of the common colour deficiencies tell apart: the set of M. Okabe and K. Ito, "Color
  * Universal Design" (2008), with the published values. Their yellow is left out, being hardly seen on white (1.3 : 1).
- * The first five reach a contrast of 3 : 1 against white; orange and sky blue do not (2.2 : 1) and come last. Markers have
- * a darker outline, and no text is ever written in these colours.
+ * The first five reach a contrast of 3 : 1 against white; orange and sky blue do not (2.2 : 1) and come last. Markers
+ * have a darker outline, and no text is ever written in these colours.
  */
 final class Palette {
     /** Text, frame and ticks. */

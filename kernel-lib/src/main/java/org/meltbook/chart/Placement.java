@@ -1,7 +1,9 @@
 package org.meltbook.chart;
 
+import java.awt.Color;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.function.Function;
 import java.util.stream.DoubleStream;
 import org.meltbook.base.Doubles;
 import org.meltbook.figure.Axis;
@@ -25,6 +27,9 @@ final class Placement {
      */
     record Track(Layer layer, int index, Doubles x, Doubles low, Doubles high) {}
 
+    /** One place where nothing is: it brings a layer whose points are all at the edge into the legend. */
+    private static final Doubles GAP = Doubles.of(Double.NaN);
+
     private final Figure figure;
     private final Tally tally = new Tally();
     private final List<Track> tracks = new ArrayList<>();
@@ -37,8 +42,13 @@ final class Placement {
         this.figure = figure;
         boolean logX = figure.x().scale() == Axis.Scale.LOG;
         boolean logY = figure.y().scale() == Axis.Scale.LOG;
-        this.x = Scale.around(xs(logX), logX, hasMarksBelow(true));
-        this.y = Scale.around(ys(logY), logY, hasMarksBelow(false));
+        DoubleStream.Builder xs = DoubleStream.builder();
+        DoubleStream.Builder ys = DoubleStream.builder();
+        figure.layers().forEach(layer -> collect(layer, xs, ys));
+        double[] allX = xs.build().toArray();
+        double[] allY = ys.build().toArray();
+        this.x = Scale.around(held(allX, logX), logX, logX && hasMarksBelow(Layer::x));
+        this.y = Scale.around(held(allY, logY), logY, logY && hasMarksBelow(marks -> marks.y()));
     }
 
     /** The placement of everything in the figure. */
@@ -60,7 +70,7 @@ final class Placement {
         return y;
     }
 
-    /** The layers of which something is drawn, from back to front. */
+    /** The layers of which something is seen, from back to front. */
     List<Track> tracks() {
         return tracks;
     }
@@ -77,43 +87,43 @@ final class Placement {
 
     /** One sentence for each kind of number that is not where it belongs, with the count. */
     List<String> remarks() {
-        return tally.sentences(tracks.isEmpty() && edgeMarks.isEmpty());
+        return tally.sentences(tracks.isEmpty());
     }
 
     // ---- the axes -------------------------------------------------------------------------------------------------
 
-    private double[] xs(boolean log) {
-        return figure.layers().stream()
-                .flatMapToDouble(layer -> layer.x().stream())
-                .filter(v -> Scale.holds(v, log))
-                .toArray();
-    }
-
-    private double[] ys(boolean log) {
-        return figure.layers().stream()
-                .flatMapToDouble(layer -> yLists(layer).stream().flatMapToDouble(Doubles::stream))
-                .filter(v -> Scale.holds(v, log))
-                .toArray();
-    }
-
-    private static List<Doubles> yLists(Layer layer) {
+    /** Takes the numbers of all points that are not gaps. */
+    private static void collect(Layer layer, DoubleStream.Builder xs, DoubleStream.Builder ys) {
+        List<Doubles> lists = new ArrayList<>();
+        int decisive = 1;
         if (layer instanceof Layer.Marks marks) {
-            return List.of(marks.y(), marks.low(), marks.high());
+            lists.addAll(List.of(marks.y(), marks.low(), marks.high()));
         } else if (layer instanceof Layer.Band band) {
-            return List.of(band.low(), band.high());
+            lists.addAll(List.of(band.low(), band.high()));
+            decisive = 2;
+        } else {
+            lists.add(((Layer.Line) layer).y());
         }
-        return List.of(((Layer.Line) layer).y());
+        for (int i = 0; i < layer.x().size(); i++) {
+            int row = i;
+            boolean gap = Double.isNaN(layer.x().at(i))
+                    || lists.stream().limit(decisive).anyMatch(list -> Double.isNaN(list.at(row)));
+            if (!gap) {
+                xs.add(layer.x().at(i));
+                lists.forEach(list -> ys.add(list.at(row)));
+            }
+        }
     }
 
-    private boolean hasMarksBelow(boolean alongX) {
-        boolean log = (alongX ? figure.x() : figure.y()).scale() == Axis.Scale.LOG;
-        return log
-                && figure.layers().stream()
-                        .filter(Layer.Marks.class::isInstance)
-                        .flatMapToDouble(layer -> alongX
-                                ? layer.x().stream()
-                                : ((Layer.Marks) layer).y().stream())
-                        .anyMatch(v -> v <= 0 && v >= -Double.MAX_VALUE);
+    private static double[] held(double[] values, boolean log) {
+        return DoubleStream.of(values).filter(v -> Scale.holds(v, log)).toArray();
+    }
+
+    private boolean hasMarksBelow(Function<Layer.Marks, Doubles> list) {
+        return figure.layers().stream()
+                .filter(Layer.Marks.class::isInstance)
+                .flatMapToDouble(layer -> list.apply((Layer.Marks) layer).stream())
+                .anyMatch(v -> v <= 0 && v >= -Double.MAX_VALUE);
     }
 
     // ---- the layers -----------------------------------------------------------------------------------------------
@@ -131,7 +141,9 @@ final class Placement {
         boolean isPath = !(layer instanceof Layer.Marks);
         if (isPath ? hasStretch(track.low()) : !track.x().isEmpty()) {
             tracks.add(track);
-        } else if (edgeMarks.size() == before) {
+        } else if (edgeMarks.size() > before) {
+            tracks.add(new Track(layer, index, GAP, GAP, GAP));
+        } else {
             tally.emptyLayers.add(layer.name());
         }
     }
@@ -221,14 +233,15 @@ final class Placement {
             if (cut) {
                 tally.bandValuesCut++;
             }
-            boolean seen = !gap && shown(px, x) && (shown(low[i], y) || shown(high[i], y));
+            boolean outside = !shown(low[i], y) && !shown(high[i], y) && within(low[i]) == within(high[i]);
+            boolean seen = !gap && shown(px, x) && !outside;
             low[i] = seen ? within(low[i]) : Double.NaN;
             high[i] = seen ? within(high[i]) : Double.NaN;
         }
         return new Track(band, index, band.x(), Doubles.of(low), Doubles.of(high));
     }
 
-    private java.awt.Color colour(int index) {
+    private Color colour(int index) {
         return Palette.of(figure.family(index));
     }
 

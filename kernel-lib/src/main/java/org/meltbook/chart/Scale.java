@@ -13,6 +13,9 @@ record Scale(double min, double max, boolean logarithmic) {
     /** Numbers beyond this are not drawn: sums and differences of them overflow. */
     private static final double LARGEST = 1e300;
 
+    /** Powers of ten beyond ± this are no longer numbers of full precision. */
+    private static final double LARGEST_POWER = 306;
+
     private static final double MARGIN = 0.045;
     private static final double MARGIN_AT_EDGE_MARKS = 0.09;
     /** Below this relative span all values count as one: rounding alone spreads them so far. */
@@ -41,18 +44,26 @@ record Scale(double min, double max, boolean logarithmic) {
             low -= half;
             high += half;
         }
-        double span = high - low;
-        double lower = low - span * (edgeMarks ? MARGIN_AT_EDGE_MARKS : MARGIN);
-        double upper = high + span * MARGIN;
+        double lower = low - (high - low) * (edgeMarks ? MARGIN_AT_EDGE_MARKS : MARGIN);
+        double upper = high + (high - low) * MARGIN;
         return logarithmic
-                ? new Scale(Math.pow(10, lower), Math.pow(10, upper), true)
+                ? new Scale(power(Math.max(lower, -LARGEST_POWER)), power(Math.min(upper, LARGEST_POWER)), true)
                 : new Scale(lower, upper, false);
+    }
+
+    private static double power(double exponent) {
+        return Math.pow(10, exponent);
     }
 
     /** Where a number lies, 0 at {@code min} and 1 at {@code max}. */
     double fraction(double value) {
         return logarithmic
-                ? Math.log10(value / min) / Math.log10(max / min)
+                ? (Math.log10(value) - Math.log10(min)) / decades()
                 : (value - min) / (max - min);
+    }
+
+    /** How many powers of ten a logarithmic axis shows. */
+    double decades() {
+        return Math.log10(max) - Math.log10(min);
     }
 }

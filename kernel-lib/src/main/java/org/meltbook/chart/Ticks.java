@@ -9,17 +9,21 @@ import java.util.function.ToDoubleFunction;
 
 /**
  * Chooses the ticks of an axis and writes their numbers. A logarithmic axis over some decades is labelled at decades,
- * as 10ⁿ or, within three decades of moderate numbers, as plain numbers; over less than that at 1, 2, 5 or finer, so that
- * it is never left without numbers.
+ * as 10ⁿ or, within three decades of moderate numbers, as plain numbers; over less than that at 1, 2, 5 or finer, so
+ * that it is never left without numbers.
  */
 final class Ticks {
     /** Labels are nearer to each other than this many of their own extents only if that cannot be avoided. */
     private static final double ROOM = 1.35;
 
     private static final int MOST = 11;
+    private static final int MOST_STEPS = 8;
     private static final double[] ONE = {1};
     private static final double[] ONE_TWO_FIVE = {1, 2, 5};
+    private static final double[] ONE_TWO_THREE_FIVE = {1, 2, 3, 5};
+    private static final double[] MANY = {1, 2, 3, 4, 5, 6, 8};
     private static final double[] ALL = {1, 2, 3, 4, 5, 6, 7, 8, 9};
+    private static final double[] HALVES = {1, 1.5, 2, 2.5, 3, 3.5, 4, 4.5, 5, 5.5, 6, 6.5, 7, 7.5, 8, 8.5, 9, 9.5};
 
     private final Scale scale;
     private final double length;
@@ -41,13 +45,13 @@ final class Ticks {
     }
 
     private List<Tick> logarithmic() {
-        double decades = Math.log10(scale.max() / scale.min());
-        boolean moderate = scale.min() > 0.9e-3 && scale.max() < 1.1e4;
+        double decades = scale.decades();
+        boolean moderate = scale.min() > 0.9e-3 && scale.max() < 1.2e5;
         boolean plain = moderate && decades <= 3.2;
         for (double[] multiples : candidates(decades, plain)) {
             List<Tick> labelled = multiples(multiples, 1, plain);
-            if (labelled.size() >= (multiples == ALL ? 3 : 2) && fit(labelled)) {
-                return withMinor(labelled, ALL, 1);
+            if (labelled.size() >= (multiples.length > 3 ? 3 : 2) && fit(labelled)) {
+                return withMinor(labelled, multiples.length > 4 ? HALVES : ALL, 1);
             }
         }
         if (decades < 2) {
@@ -62,7 +66,7 @@ final class Ticks {
 
     private static List<double[]> candidates(double decades, boolean plain) {
         if (decades < 0.75) {
-            return List.of(ALL, ONE_TWO_FIVE);
+            return List.of(ALL, MANY, ONE_TWO_THREE_FIVE, ONE_TWO_FIVE);
         }
         if (decades < 2.3) {
             return plain ? List.of(ONE_TWO_FIVE, ONE) : List.of(ONE, ONE_TWO_FIVE);
@@ -102,7 +106,7 @@ final class Ticks {
         int[] growth = {2, 5, 10};
         BigDecimal base = step;
         List<Tick> labelled = steps(base, true);
-        for (int i = 0; labelled.size() > MOST || !fit(labelled); i++) {
+        for (int i = 0; labelled.size() > MOST_STEPS || !fit(labelled); i++) {
             base = step.multiply(BigDecimal.valueOf(growth[i % 3])).movePointRight(i / 3);
             labelled = steps(base, true);
         }
@@ -134,9 +138,9 @@ final class Ticks {
             return "0";
         }
         if (order < -3 || order > 5) {
-            int digits = Math.max(0, order(value) - order(step));
-            BigDecimal mantissa = value.movePointLeft(order(value)).setScale(digits, RoundingMode.HALF_EVEN);
-            return minus(mantissa.toPlainString()) + "×10" + raised(order(value));
+            int digits = Math.max(0, order - order(step));
+            BigDecimal mantissa = value.movePointLeft(order).setScale(digits, RoundingMode.HALF_EVEN);
+            return minus(mantissa.toPlainString()) + "×10" + raised(order);
         }
         return minus(value.setScale(Math.max(0, -order(step)), RoundingMode.HALF_EVEN).toPlainString());
     }
@@ -153,7 +157,8 @@ final class Ticks {
         for (int i = 1; i < ticks.size(); i++) {
             double gap = length
                     * (scale.fraction(ticks.get(i).value()) - scale.fraction(ticks.get(i - 1).value()));
-            double extents = extent.applyAsDouble(ticks.get(i).label()) + extent.applyAsDouble(ticks.get(i - 1).label());
+            double extents =
+                    extent.applyAsDouble(ticks.get(i).label()) + extent.applyAsDouble(ticks.get(i - 1).label());
             if (gap < ROOM * extents / 2) {
                 return false;
             }
