@@ -1,0 +1,159 @@
+package org.meltbook.spectrum;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Random;
+import org.meltbook.base.Doubles;
+import org.meltbook.base.NumberText;
+import org.meltbook.base.Progress;
+import org.meltbook.base.RangeException;
+import org.meltbook.measure.Curve;
+import org.meltbook.numeric.NonNegativeLeastSquares;
+
+/**
+ * Non-negative moduli on a fixed grid of relaxation times that come nearest to measured moduli in relative terms. Storage
+ * and loss points keep their own frequencies; either curve may be left out.
+ */
+final class ModulusFit {
+    private final Doubles times;
+    private final double[][] matrix;
+    private final double[] residuals;
+    private final int storagePoints;
+    private final RelaxationSpectrum spectrum;
+
+    private ModulusFit(Doubles times, double[][] matrix, int storagePoints, Progress progress) {
+        this.times = times;
+        this.matrix = matrix;
+        this.storagePoints = storagePoints;
+        double[] ones = new double[matrix.length];
+        java.util.Arrays.fill(ones, 1);
+        double[] moduli = solve(ones, progress);
+        this.spectrum = spectrum(moduli);
+        this.residuals = new double[matrix.length];
+        for (int i = 0; i < residuals.length; i++) {
+            residuals[i] = ratio(i, moduli) - 1;
+        }
+    }
+
+    /** Both curves together. */
+    static ModulusFit joint(Curve storage, Curve loss, Doubles times, Progress progress) {
+        List<double[]> rows = new ArrayList<>(storageRows(storage, times));
+        rows.addAll(lossRows(loss, times));
+        return new ModulusFit(times, rows.toArray(new double[0][]), storage.size(), progress);
+    }
+
+    /** The storage modulus alone. */
+    static ModulusFit ofStorage(Curve storage, Doubles times, Progress progress) {
+        return new ModulusFit(times, storageRows(storage, times).toArray(new double[0][]), storage.size(), progress);
+    }
+
+    /** The loss modulus alone. */
+    static ModulusFit ofLoss(Curve loss, Doubles times, Progress progress) {
+        return new ModulusFit(times, lossRows(loss, times).toArray(new double[0][]), 0, progress);
+    }
+
+    private static List<double[]> storageRows(Curve curve, Doubles times) {
+        List<double[]> rows = new ArrayList<>();
+        for (int i = 0; i < curve.size(); i++) {
+            double frequency = curve.x().at(i);
+            double measured = curve.y().at(i);
+            rows.add(times.map(time -> RelaxationSpectrum.storageShare(frequency * time) / measured).toArray());
+        }
+        return rows;
+    }
+
+    private static List<double[]> lossRows(Curve curve, Doubles times) {
+        List<double[]> rows = new ArrayList<>();
+        for (int i = 0; i < curve.size(); i++) {
+            double frequency = curve.x().at(i);
+            double measured = curve.y().at(i);
+            rows.add(times.map(time -> RelaxationSpectrum.lossShare(frequency * time) / measured).toArray());
+        }
+        return rows;
+    }
+
+    private double[] solve(double[] target, Progress progress) {
+        NonNegativeLeastSquares.Solution solution = NonNegativeLeastSquares.solve(matrix, target, progress);
+        if (!solution.converged()) {
+            throw new RangeException("the spectrum on a grid of " + times.size() + " relaxation times did not settle within "
+                    + solution.steps() + " steps; ask for fewer modes a decade");
+        }
+        return solution.unknowns().toArray();
+    }
+
+    private RelaxationSpectrum spectrum(double[] moduli) {
+        List<RelaxationSpectrum.Mode> modes = new ArrayList<>();
+        for (int j = 0; j < moduli.length; j++) {
+            if (moduli[j] > 0) {
+                modes.add(new RelaxationSpectrum.Mode(moduli[j], times.at(j)));
+            }
+        }
+        return RelaxationSpectrum.of(modes);
+    }
+
+    private double ratio(int row, double[] moduli) {
+        double sum = 0;
+        for (int j = 0; j < moduli.length; j++) {
+            sum += matrix[row][j] * moduli[j];
+        }
+        return sum;
+    }
+
+    RelaxationSpectrum spectrum() {
+        return spectrum;
+    }
+
+    /** model / measured − 1 of each point, storage first. */
+    double[] residuals() {
+        return residuals.clone();
+    }
+
+    /** Root mean square of the relative residuals. */
+    double rootMeanSquare() {
+        double sum = 0;
+        for (double residual : residuals) {
+            sum += residual * residual;
+        }
+        return Math.sqrt(sum / residuals.length);
+    }
+
+    /**
+     * Spectra refitted to the model plus residuals drawn again, each curve from its own, widened for the modes used up:
+     * what the scatter of the points leaves open.
+     */
+    List<RelaxationSpectrum> replicates(int count, long seed, Progress progress) {
+        Random random = new Random(seed);
+        double spare = Math.max(1, residuals.length - spectrum.modes().size());
+        double widened = Math.sqrt(residuals.length / spare);
+        List<RelaxationSpectrum> all = new ArrayList<>();
+        for (int k = 0; k < count; k++) {
+            progress.at(k, count, "spectra for the intervals");
+            double[] target = new double[residuals.length];
+            for (int i = 0; i < target.length; i++) {
+                boolean storage = i < storagePoints;
+                int drawn = storage
+                        ? random.nextInt(storagePoints)
+                        : storagePoints + random.nextInt(residuals.length - storagePoints);
+                target[i] = 1 + residuals[i] - widened * residuals[drawn];
+            }
+            all.add(spectrum(solve(target, progress)));
+        }
+        return all;
+    }
+
+    /** Refuses points that are no moduli at a frequency. */
+    static Curve checked(Curve curve) {
+        String what = curve.y().quantity().label();
+        if (curve.size() < 3) {
+            throw new RangeException("a spectrum needs three usable points of the " + what + " at least, found " + curve.size());
+        }
+        for (int i = 0; i < curve.size(); i++) {
+            if (!(curve.x().at(i) > 0 && curve.y().at(i) > 0)) {
+                throw new RangeException("usable point " + (i + 1) + " of the " + what + " is "
+                        + NumberText.of(curve.y().at(i)) + " Pa at " + NumberText.of(curve.x().at(i))
+                        + " rad/s: a spectrum needs both above zero; mark the row unusable to set it aside");
+            }
+        }
+        return curve;
+    }
+}
