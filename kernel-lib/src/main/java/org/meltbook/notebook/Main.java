@@ -285,8 +285,12 @@ public final class Main {
 
         @Override
         public Integer call() {
-            JupyterKernel.serve(connection, settings());
-            return 0;
+            try {
+                JupyterKernel.serve(connection, settings());
+                return 0;
+            } catch (IllegalArgumentException e) {
+                throw new NotebookException(connection + ": cannot be served: " + e.getMessage(), e);
+            }
         }
     }
 

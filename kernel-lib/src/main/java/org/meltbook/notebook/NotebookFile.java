@@ -6,7 +6,6 @@ import com.google.gson.JsonParseException;
 import com.google.gson.JsonParser;
 import com.google.gson.Strictness;
 import com.google.gson.stream.JsonReader;
-import com.google.gson.stream.JsonToken;
 import java.io.IOException;
 import java.io.StringReader;
 import java.nio.charset.CharacterCodingException;
@@ -69,9 +68,8 @@ public final class NotebookFile {
         try (JsonReader reader = new JsonReader(new StringReader(text))) {
             reader.setStrictness(Strictness.STRICT);
             JsonElement root = JsonParser.parseReader(reader);
-            if (reader.peek() != JsonToken.END_DOCUMENT) {
-                throw new NotebookException(name + ": not a notebook: text follows the JSON");
-            }
+            // A strict reader throws here if text follows.
+            reader.peek();
             return root;
         } catch (IOException | JsonParseException | IllegalStateException e) {
             throw new NotebookException(name + ": not a notebook: it is not JSON (" + place(e) + ")", e);
