@@ -34,4 +34,16 @@ public record Verdict(Standing standing, String reason) {
     public boolean usable() {
         return standing != Standing.UNUSABLE;
     }
+
+    /** The worse of two standings, with both reasons: what two checks say of one row. */
+    public Verdict and(Verdict other) {
+        if (equals(other) || other.equals(SOUND)) {
+            return this;
+        }
+        if (equals(SOUND)) {
+            return other;
+        }
+        Standing worse = standing.compareTo(other.standing) > 0 ? standing : other.standing;
+        return new Verdict(worse, reason + "; " + other.reason);
+    }
 }

@@ -1,0 +1,256 @@
+package org.meltbook.measure;
+
+import java.math.BigDecimal;
+import java.util.ArrayList;
+import java.util.Collection;
+import java.util.EnumMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.function.IntFunction;
+import java.util.stream.IntStream;
+import java.util.stream.Stream;
+import org.meltbook.base.Doubles;
+import org.meltbook.base.RangeException;
+import org.meltbook.units.Conversion;
+import org.meltbook.units.LabUnit;
+import org.meltbook.units.Quantity;
+
+/**
+ * Columns of readings with their units, on the way to a measurement. Here units become SI, each row gets its first
+ * verdict, and each step leaves a note; no row is dropped and no number is changed otherwise.
+ */
+public final class Readings {
+    private static final List<Quantity> STEADY_SHEAR =
+            List.of(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY);
+    private static final List<Quantity> OSCILLATION =
+            List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS);
+    private static final int MOST_DIGITS = 17;
+
+    private final String step;
+    private final Conditions conditions;
+    private final Map<Quantity, Column> columns;
+    private final List<Note> trail;
+
+    private Readings(String step, Conditions conditions, Map<Quantity, Column> columns, List<Note> trail) {
+        this.step = step;
+        this.conditions = conditions;
+        this.columns = columns;
+        this.trail = trail;
+    }
+
+    /** One column: SI values, the conversion that led to them, and with how many digits they came. */
+    private record Column(Series series, Conversion conversion, int digits) {
+        /** Half a unit of the last digit given, relative to the number of that row. */
+        double rounding(int row) {
+            double written = Math.abs(conversion.fromSi(series.at(row)));
+            double exponent = Math.floor(Math.log10(written) + 1e-12);
+            return 0.5 * Math.pow(10, exponent - digits + 1) / written;
+        }
+    }
+
+    /**
+     * No columns yet.
+     *
+     * @param step who reads, as it will stand in the notes: {@code intake}
+     */
+    public static Readings of(String step, Conditions conditions) {
+        return new Readings(step, conditions, Map.of(), List.of());
+    }
+
+    /**
+     * The same with one more column.
+     *
+     * @param unit   the unit of {@code values}
+     * @param digits with how many significant digits the most precise of the values was written
+     * @throws RangeException if there is a column of that quantity, or its length differs from the others
+     */
+    public Readings with(Quantity quantity, LabUnit unit, Doubles values, int digits) {
+        if (columns.containsKey(quantity)) {
+            throw new RangeException("two columns of " + quantity.label() + ": which one is meant?");
+        }
+        for (Column other : columns.values()) {
+            if (other.series().size() != values.size()) {
+                throw new RangeException(quantity.label() + " has " + values.size() + " rows, "
+                        + other.series().quantity().label() + " has " + other.series().size());
+            }
+        }
+        Conversion conversion = unit.conversion(quantity);
+        Map<Quantity, Column> more = new EnumMap<>(Quantity.class);
+        more.putAll(columns);
+        more.put(quantity, new Column(new Series(quantity, conversion.toSi(values), unit.text()), conversion, digits));
+        return new Readings(step, conditions, more, conversion.isIdentity() ? trail : noted(quantity, unit, conversion));
+    }
+
+    /** The same with one more column, whose digits are those of the shortest decimal text of its numbers. */
+    public Readings with(Quantity quantity, LabUnit unit, Doubles values) {
+        return with(quantity, unit, values, digits(values));
+    }
+
+    private List<Note> noted(Quantity quantity, LabUnit unit, Conversion conversion) {
+        return longer(quantity.label() + " came in " + unit + ", " + conversion + " to " + quantity.siUnit());
+    }
+
+    private List<Note> longer(String text) {
+        return Stream.concat(trail.stream(), Stream.of(new Note(step, text))).toList();
+    }
+
+    private static int digits(Doubles values) {
+        int most = 1;
+        for (int row = 0; row < values.size() && most < MOST_DIGITS; row++) {
+            double value = values.at(row);
+            if (Double.isFinite(value) && value != 0) {
+                BigDecimal shortest = new BigDecimal(Double.toString(value)).stripTrailingZeros();
+                most = Math.max(most, shortest.precision());
+            }
+        }
+        return most;
+    }
+
+    /** Whether there is a column of the quantity. */
+    public boolean has(Quantity quantity) {
+        return columns.containsKey(quantity);
+    }
+
+    /** Whether these columns make a flow curve: two of shear rate, shear stress and viscosity. */
+    public static boolean makeFlowCurve(Collection<Quantity> quantities) {
+        return STEADY_SHEAR.stream().filter(quantities::contains).count() >= 2;
+    }
+
+    /** Whether these columns make a frequency sweep: angular frequency, storage and loss modulus. */
+    public static boolean makeFrequencySweep(Collection<Quantity> quantities) {
+        return quantities.containsAll(OSCILLATION);
+    }
+
+    /** What is needed to make a measurement of columns, for messages. */
+    public static String needed() {
+        return "angular frequency, storage modulus and loss modulus for a frequency sweep, or two of shear rate, shear"
+                + " stress and viscosity for a flow curve";
+    }
+
+    /**
+     * The frequency sweep of these columns.
+     *
+     * @throws RangeException if angular frequency, storage or loss modulus is missing
+     */
+    public FrequencySweep frequencySweep() {
+        return frequencySweep(this, this);
+    }
+
+    /** The frequency sweep of a storage and a loss modulus that have frequencies of their own. */
+    public static FrequencySweep frequencySweep(Readings storage, Readings loss) {
+        List<Note> notes = Stream.concat(storage.trail.stream(), loss.trail.stream()).distinct().toList();
+        return FrequencySweep.of(
+                storage.conditions, storage.modulus(Quantity.STORAGE_MODULUS), loss.modulus(Quantity.LOSS_MODULUS), notes);
+    }
+
+    private Curve modulus(Quantity modulus) {
+        Series frequency = column(Quantity.ANGULAR_FREQUENCY).series();
+        Series values = column(modulus).series();
+        return new Curve(frequency, values, verdicts(values.size(), row -> checked(
+                Quantity.ANGULAR_FREQUENCY, frequency.at(row), RowCheck.aboveZero(modulus, values.at(row)))));
+    }
+
+    /** Without a rate or frequency to stand at, nothing more need be said of a row. */
+    private static Verdict checked(Quantity scanned, double value, Verdict other) {
+        Verdict first = RowCheck.aboveZero(scanned, value);
+        return first.usable() ? first.and(other) : first;
+    }
+
+    /**
+     * The flow curve of these columns: what is missing of shear rate, shear stress and viscosity follows from
+     * σ = η γ̇; where all three are given, rows in which they disagree are doubtful.
+     *
+     * @throws RangeException if fewer than two of the three are there
+     */
+    public FlowCurve flowCurve() {
+        Readings full = completed();
+        Optional<Curve> normal = Optional.of(Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
+                .filter(columns::containsKey)
+                .map(quantity -> full.overRate(quantity, RowCheck::normalStress));
+        boolean allGiven = full == this;
+        return FlowCurve.of(
+                conditions,
+                full.overRate(Quantity.SHEAR_STRESS, RowCheck::aboveZero, allGiven),
+                full.overRate(Quantity.VISCOSITY, RowCheck::aboveZero, allGiven),
+                normal,
+                full.trail);
+    }
+
+    private Readings completed() {
+        List<Quantity> missing =
+                STEADY_SHEAR.stream().filter(q -> !columns.containsKey(q)).toList();
+        if (missing.size() > 1) {
+            throw new RangeException("a flow curve needs two of shear rate, shear stress and viscosity; missing are "
+                    + String.join(" and ", missing.stream().map(Quantity::label).toList()));
+        }
+        return missing.isEmpty() ? this : withThird(missing.get(0));
+    }
+
+    private Readings withThird(Quantity missing) {
+        Column first = column(STEADY_SHEAR.stream().filter(q -> q != missing).findFirst().orElseThrow());
+        int size = first.series().size();
+        double[] third = new double[size];
+        for (int row = 0; row < size; row++) {
+            double value = switch (missing) {
+                case SHEAR_RATE -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.VISCOSITY, row);
+                case SHEAR_STRESS -> at(Quantity.VISCOSITY, row) * at(Quantity.SHEAR_RATE, row);
+                default -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.SHEAR_RATE, row);
+            };
+            third[row] = Double.isFinite(value) ? value : Double.NaN;
+        }
+        Readings more = with(missing, LabUnit.parse(missing.siUnit()), Doubles.of(third), MOST_DIGITS);
+        String how = switch (missing) {
+            case SHEAR_RATE -> "shear stress / viscosity";
+            case SHEAR_STRESS -> "viscosity × shear rate";
+            default -> "shear stress / shear rate";
+        };
+        List<Note> notes = more.longer(missing.label() + " was not given: computed as " + how);
+        return new Readings(step, conditions, more.columns, notes);
+    }
+
+    private double at(Quantity quantity, int row) {
+        return columns.get(quantity).series().at(row);
+    }
+
+    /** What a check says of one number of a quantity. */
+    private interface Check {
+        Verdict of(Quantity quantity, double value);
+    }
+
+    private Curve overRate(Quantity quantity, Check check) {
+        return overRate(quantity, check, false);
+    }
+
+    private Curve overRate(Quantity quantity, Check check, boolean compareThree) {
+        Series rate = column(Quantity.SHEAR_RATE).series();
+        Series values = column(quantity).series();
+        return new Curve(rate, values, verdicts(values.size(), row -> {
+            Verdict verdict = checked(Quantity.SHEAR_RATE, rate.at(row), check.of(quantity, values.at(row)));
+            return compareThree && verdict.usable() ? verdict.and(productOf(row)) : verdict;
+        }));
+    }
+
+    private Verdict productOf(int row) {
+        double allowed = 0;
+        for (Quantity quantity : STEADY_SHEAR) {
+            allowed += columns.get(quantity).rounding(row);
+        }
+        return RowCheck.product(
+                at(Quantity.SHEAR_RATE, row), at(Quantity.SHEAR_STRESS, row), at(Quantity.VISCOSITY, row), allowed);
+    }
+
+    private static List<Verdict> verdicts(int size, IntFunction<Verdict> check) {
+        List<Verdict> all = new ArrayList<>(size);
+        IntStream.range(0, size).mapToObj(check).forEach(all::add);
+        return all;
+    }
+
+    private Column column(Quantity quantity) {
+        if (!columns.containsKey(quantity)) {
+            throw new RangeException("no column of " + quantity.label() + "; there is "
+                    + String.join(", ", columns.keySet().stream().map(Quantity::label).toList()));
+        }
+        return columns.get(quantity);
+    }
+}
