@@ -53,7 +53,7 @@ final class Broadcast {
         waiting.forEach(item -> item.due = System.nanoTime());
         notifyAll();
         boolean interrupted = false;
-        while (thread.isAlive() && (sending || !waiting.isEmpty())) {
+        while (!closed && (sending || !waiting.isEmpty())) {
             interrupted |= !pause(0);
         }
         restore(interrupted);
@@ -62,10 +62,7 @@ final class Broadcast {
     /** Sends what waits, then closes the socket. */
     void close() throws InterruptedException {
         flush();
-        synchronized (this) {
-            closed = true;
-            notifyAll();
-        }
+        end();
         thread.join();
     }
 
@@ -93,8 +90,14 @@ final class Broadcast {
                 sent();
             }
         } finally {
+            end();
             socket.close();
         }
+    }
+
+    private synchronized void end() {
+        closed = true;
+        notifyAll();
     }
 
     private synchronized Item take() {

@@ -20,6 +20,7 @@ final class Failures {
     private static final int MOST_FRAMES = 8;
     private static final int MOST_ERRORS = 5;
     private static final int MOST_CAUSES = 5;
+    private static final String NO_REASON = "this cannot be compiled";
     private static final Pattern WRAPPER = Pattern.compile("(REPL\\.)?\\$JShell\\$\\w+\\.?");
 
     private final JShell shell;
@@ -39,25 +40,40 @@ final class Failures {
     /** A snippet that the compiler refused. */
     Outcome.Failed refused(Snippet snippet, Origin origin) {
         List<Diag> errors = shell.diagnostics(snippet).filter(Diag::isError).toList();
+        if (errors.isEmpty()) {
+            return compileError(origin, origin.offset, NO_REASON);
+        }
         List<String> report = new ArrayList<>();
         for (Diag error : errors.subList(0, Math.min(MOST_ERRORS, errors.size()))) {
-            int at = origin.offset + (int) Math.max(0, error.getPosition());
-            report.addAll(pointed(origin.cell, at, plain(error)));
+            report.addAll(pointed(origin.cell, placeOf(error, origin), plain(error)));
         }
-        if (errors.isEmpty()) {
-            report.addAll(pointed(origin.cell, origin.offset, "this cannot be compiled"));
-        }
-        int first = errors.isEmpty() ? 0 : (int) Math.max(0, errors.get(0).getPosition());
-        String message = errors.isEmpty() ? "this cannot be compiled" : plain(errors.get(0));
-        int line = origin.cell.lineAt(Math.min(origin.offset + first, origin.cell.text().length()));
-        return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, line, report);
+        Diag first = errors.get(0);
+        int line = origin.cell.lineAt(placeOf(first, origin));
+        return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", plain(first), line, report);
+    }
+
+    private static int placeOf(Diag error, Origin origin) {
+        int at = origin.offset + (int) Math.max(0, error.getPosition());
+        return Math.min(at, origin.cell.text().length());
     }
 
     /** A part of a cell that never ends. */
     Outcome.Failed unfinished(Origin origin) {
         int open = CellText.openComment(origin.cell.text());
-        int at = open < 0 ? origin.offset : open;
-        String message = open < 0 ? "this is not a whole statement" : "this comment has no end";
+        return open < 0
+                ? compileError(origin, origin.offset, "this is not a whole statement")
+                : compileError(origin, open, "this comment has no end");
+    }
+
+    /** A cell on which the compiler itself broke down. */
+    Outcome.Failed beyondCompiler(Throwable broken) {
+        String message = broken.toString().contains("StackOverflowError")
+                ? "an expression of this cell is nested too deeply to be compiled"
+                : "the compiler cannot take this cell: " + broken;
+        return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, 0, List.of(message));
+    }
+
+    private static Outcome.Failed compileError(Origin origin, int at, String message) {
         return new Outcome.Failed(
                 Outcome.Reason.COMPILE,
                 "CompileError",
@@ -66,22 +82,29 @@ final class Failures {
                 pointed(origin.cell, at, message));
     }
 
-    /** A declaration that needs something which the whole cell did not declare. */
-    Outcome.Failed unresolved(DeclarationSnippet snippet, Origin origin) {
+    /** A declaration that needs something which is not, or no longer, declared. */
+    Outcome.Failed unresolved(DeclarationSnippet snippet, Origin current) {
+        Origin origin = origins.getOrDefault(snippet.id(), current);
         List<String> missing = shell.unresolvedDependencies(snippet).toList();
-        if (missing.isEmpty()) {
-            return refused(snippet, origin);
+        String message = missing.isEmpty()
+                ? shell.diagnostics(snippet).map(Failures::plain).findFirst().orElse(NO_REASON)
+                : "cannot find " + String.join(", ", missing);
+        int at = origin.offset + (missing.isEmpty() ? 0 : placeOf(missing.get(0), snippet.source()));
+        List<String> report = new ArrayList<>();
+        boolean elsewhere = origin.number != current.number;
+        if (elsewhere) {
+            report.add("this needs a declaration of the cell run as number " + origin.number + ", which no longer holds:");
         }
-        String message = "cannot find " + String.join(", ", missing);
-        String name = missing.get(0).replaceAll("\\(.*", "").replaceAll(".*\\s", "");
-        Matcher place = Pattern.compile("\\b" + Pattern.quote(name) + "\\b").matcher(CellText.masked(snippet.source()));
-        int at = origin.offset + (place.find() ? place.start() : 0);
-        return new Outcome.Failed(
-                Outcome.Reason.COMPILE,
-                "CompileError",
-                message,
-                origin.cell.lineAt(at),
-                pointed(origin.cell, at, message));
+        report.addAll(pointed(origin.cell, at, message));
+        int line = elsewhere ? current.cell.lineAt(current.offset) : origin.cell.lineAt(at);
+        return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, line, report);
+    }
+
+    /** Where in a source the name stands that JShell misses, which it calls {@code class Egg} or {@code method odd(int)}. */
+    private static int placeOf(String missing, String source) {
+        String name = missing.replaceAll("\\(.*", "").replaceAll(".*\\s", "");
+        Matcher place = Pattern.compile("\\b" + Pattern.quote(name) + "\\b").matcher(CellText.masked(source));
+        return place.find() ? place.start() : 0;
     }
 
     /**
@@ -109,7 +132,7 @@ final class Failures {
         int line = current.cell.lineAt(current.offset);
         List<String> report = new ArrayList<>();
         report.add("the result cannot be shown: " + (speaksForItself.test(thrown) ? message : kind + ": " + message));
-        report.addAll(caret(current.cell, line, 0));
+        report.addAll(caret(current.cell, line, -1));
         report.addAll(causesOf(thrown));
         return new Outcome.Failed(Outcome.Reason.THROWN, kind, message, line, report);
     }
@@ -143,17 +166,17 @@ final class Failures {
                 .orElse(0);
     }
 
+    /** The lines that led to the failure, innermost first; the first with a caret. */
     private static List<String> framesOf(List<Place> places, Origin current) {
         List<String> lines = new ArrayList<>();
-        List<Place> shown = places.stream().distinct().toList();
-        for (Place place : shown.subList(0, Math.min(MOST_FRAMES, shown.size()))) {
-            String where = place.origin.number == current.number ? "" : "in the cell run as number " + place.origin.number + ":";
-            if (!where.isEmpty()) {
-                lines.add(where);
+        int number = current.number;
+        for (Place place : places.stream().distinct().limit(MOST_FRAMES).toList()) {
+            if (place.origin.number != number) {
+                number = place.origin.number;
+                lines.add(number == current.number ? "in this cell:" : "in the cell run as number " + number + ":");
             }
-            boolean first = lines.size() <= 1;
             List<String> pointed = caret(place.origin.cell, place.line, -1);
-            lines.addAll(first ? pointed : pointed.subList(0, 1));
+            lines.addAll(place.equals(places.get(0)) ? pointed : pointed.subList(0, 1));
         }
         return lines;
     }
@@ -197,7 +220,7 @@ final class Failures {
                 .filter(line -> !line.strip().matches("location:\\s+class\\s*(" + WRAPPER + ")?"))
                 .map(line -> WRAPPER.matcher(line).replaceAll("").replace(" in class  ", " "))
                 .reduce((a, b) -> a + "\n" + b)
-                .orElse("this cannot be compiled");
+                .orElse(NO_REASON);
     }
 
     /**

@@ -12,7 +12,6 @@ import java.util.stream.Stream;
 import jdk.jshell.DeclarationSnippet;
 import jdk.jshell.JShell;
 import jdk.jshell.JShellException;
-import jdk.jshell.Snippet;
 import jdk.jshell.Snippet.Kind;
 import jdk.jshell.Snippet.Status;
 import jdk.jshell.Snippet.SubKind;
@@ -77,6 +76,9 @@ public final class JShellEvaluator implements Evaluator {
         run.begin();
         try {
             return runPieces(new CellText(cell), ++cells);
+        } catch (RuntimeException | Error e) {
+            // Cell code never gets here with what it throws: this is the compiler, on code beyond its strength.
+            return failures.beyondCompiler(e);
         } finally {
             streams.flush();
             run.end();
@@ -93,8 +95,9 @@ public final class JShellEvaluator implements Evaluator {
         Optional<MimeBundle> result = Optional.empty();
         Deque<Piece> waiting = new ArrayDeque<>(parts.pieces);
         while (!waiting.isEmpty()) {
-            Step step = runPiece(next(waiting, declared), waiting.isEmpty(), declared);
+            Step step = runPiece(next(waiting, declared), declared);
             if (step.failure.isPresent()) {
+                dropOpen(declared);
                 return step.failure.get();
             }
             result = step.result;
@@ -133,8 +136,9 @@ public final class JShellEvaluator implements Evaluator {
             boolean whole = info.completeness() == SourceCodeAnalysis.Completeness.CONSIDERED_INCOMPLETE;
             int end = cell.text().length() - (whole ? 0 : info.remaining().length());
             boolean silent = CellText.endsWithSemicolon(cell.text().substring(offset, end));
-            pieces.add(new Piece(origin, whole ? rest : info.source(), silent));
             offset = end + CellText.firstCode(cell.text().substring(end));
+            boolean last = offset == cell.text().length();
+            pieces.add(new Piece(origin, whole ? rest : info.source(), last && !silent));
         }
         return new Parts(pieces, Optional.empty());
     }
@@ -160,7 +164,7 @@ public final class JShellEvaluator implements Evaluator {
         return failures.refused(shell.eval(rest).get(0).snippet(), broken);
     }
 
-    private Step runPiece(Piece piece, boolean last, List<Declared> declared) {
+    private Step runPiece(Piece piece, List<Declared> declared) {
         control.clear();
         SnippetEvent event = shell.eval(piece.source).stream()
                 .filter(e -> e.causeSnippet() == null)
@@ -177,7 +181,7 @@ public final class JShellEvaluator implements Evaluator {
                 declared.add(new Declared(declaration, piece.origin));
             }
             boolean expression = temporary || event.snippet().kind() == Kind.EXPRESSION;
-            return last && expression && !piece.silent ? shown(event, piece.origin) : Step.QUIET;
+            return piece.shows && expression ? shown(event, piece.origin) : Step.QUIET;
         } finally {
             if (temporary) {
                 drop(event);
@@ -220,13 +224,11 @@ public final class JShellEvaluator implements Evaluator {
             run.enterCellCode();
             return new Step(
                     Optional.empty(), Optional.of(Rendering.of(value.get().object(), settings.renderer())));
-        } catch (VirtualMachineError | LinkageError | RuntimeException | CellStopped e) {
-            return new Step(
-                    Optional.of(
-                            run.stopAsked()
-                                    ? failures.interrupted(Stream.empty(), piece)
-                                    : failures.notShown(e, piece)),
-                    Optional.empty());
+        } catch (Throwable e) {
+            // A renderer, or a toString of the cell, may throw anything.
+            Outcome.Failed failed =
+                    run.stopAsked() ? failures.interrupted(Stream.empty(), piece) : failures.notShown(e, piece);
+            return new Step(Optional.of(failed), Optional.empty());
         } finally {
             run.leaveCellCode();
         }
@@ -234,13 +236,19 @@ public final class JShellEvaluator implements Evaluator {
 
     /** Declarations may need each other in any order, so a cell is judged at its end; what stays open goes. */
     private Optional<Outcome.Failed> unresolved(List<Declared> declared) {
-        List<Declared> open = declared.stream()
+        Optional<Outcome.Failed> failure = declared.stream()
                 .filter(d -> isOpen(shell.status(d.snippet)))
-                .toList();
-        Optional<Outcome.Failed> failure =
-                open.stream().findFirst().map(d -> failures.unresolved(d.snippet, d.origin));
-        open.forEach(d -> shell.drop(d.snippet));
+                .findFirst()
+                .map(d -> failures.unresolved(d.snippet, d.origin));
+        dropOpen(declared);
         return failure;
+    }
+
+    private void dropOpen(List<Declared> declared) {
+        declared.stream()
+                .map(Declared::snippet)
+                .filter(s -> isOpen(shell.status(s)))
+                .forEach(shell::drop);
     }
 
     private static boolean isOpen(Status status) {
@@ -300,9 +308,9 @@ public final class JShellEvaluator implements Evaluator {
     /**
      * One snippet of a cell.
      *
-     * @param silent whether it ends with a semicolon, so that its value is not shown
+     * @param shows whether its value, if it has one, is the cell's: it is the last and ends without a semicolon
      */
-    private record Piece(Origin origin, String source, boolean silent) {}
+    private record Piece(Origin origin, String source, boolean shows) {}
 
     private record Parts(List<Piece> pieces, Optional<Origin> broken) {}
 

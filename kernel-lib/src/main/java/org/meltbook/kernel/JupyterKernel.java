@@ -133,46 +133,52 @@ public final class JupyterKernel {
 
     private void listen(ZMQ.Socket socket) {
         while (shutDown.getCount() > 0) {
-            Envelope request = wire.receive(socket);
-            if (serve(socket, request) == After.ABORT_QUEUED) {
-                abortQueued(socket);
-            }
+            serve(socket, wire.receive(socket));
         }
     }
 
-    /** Refuses the cells that wait behind a failed one; other requests among them are served. */
-    private void abortQueued(ZMQ.Socket socket) {
-        Optional<Envelope> queued = wire.poll(socket, ZMQ.DONTWAIT);
-        while (queued.isPresent()) {
-            Envelope request = queued.get();
+    private void serve(ZMQ.Socket socket, Envelope request) {
+        broadcast.send(request.header(), "status", state("busy"));
+        List<Envelope> queued = List.of();
+        try {
+            Optional<JsonObject> reply = reply(request);
+            broadcast.flush();
+            // What waits must be known before the reply goes out: a cell sent after that is not behind the failed one.
+            queued = execution.abortsAfter(request, reply) ? waiting(socket) : List.of();
+            reply.ifPresent(content -> send(socket, request, content));
+        } catch (ZMQException e) {
+            throw e;
+        } catch (RuntimeException e) {
+            String kind = e.getClass().getSimpleName();
+            send(socket, request, Execution.error(kind, String.valueOf(e.getMessage()), List.of()));
+        } finally {
+            broadcast.send(request.header(), "status", state("idle"));
+        }
+        abort(socket, queued);
+        if (request.type().equals("shutdown_request")) {
+            shutDown.countDown();
+        }
+    }
+
+    private List<Envelope> waiting(ZMQ.Socket socket) {
+        List<Envelope> queued = new ArrayList<>();
+        Optional<Envelope> next = wire.poll(socket, ZMQ.DONTWAIT);
+        while (next.isPresent()) {
+            queued.add(next.get());
+            next = wire.poll(socket, ZMQ.DONTWAIT);
+        }
+        return queued;
+    }
+
+    /** Refuses the cells that waited behind a failed one; other requests among them are served. */
+    private void abort(ZMQ.Socket socket, List<Envelope> queued) {
+        for (Envelope request : queued) {
             if (request.type().equals("execute_request")) {
                 answer(socket, request, execution.aborted());
             } else {
                 serve(socket, request);
             }
-            queued = wire.poll(socket, ZMQ.DONTWAIT);
         }
-    }
-
-    private After serve(ZMQ.Socket socket, Envelope request) {
-        broadcast.send(request.header(), "status", state("busy"));
-        After after = After.GO_ON;
-        try {
-            Optional<JsonObject> reply = reply(request);
-            broadcast.flush();
-            reply.ifPresent(content -> send(socket, request, content));
-            after = execution.abortsAfter(request, reply) ? After.ABORT_QUEUED : After.GO_ON;
-        } catch (ZMQException e) {
-            throw e;
-        } catch (RuntimeException e) {
-            send(socket, request, Execution.error(e.getClass().getSimpleName(), String.valueOf(e.getMessage()), List.of()));
-        } finally {
-            broadcast.send(request.header(), "status", state("idle"));
-        }
-        if (request.type().equals("shutdown_request")) {
-            shutDown.countDown();
-        }
-        return after;
     }
 
     private void answer(ZMQ.Socket socket, Envelope request, JsonObject content) {
@@ -234,11 +240,6 @@ public final class JupyterKernel {
         JsonObject content = new JsonObject();
         content.addProperty("execution_state", name);
         return content;
-    }
-
-    private enum After {
-        GO_ON,
-        ABORT_QUEUED
     }
 
     @FunctionalInterface

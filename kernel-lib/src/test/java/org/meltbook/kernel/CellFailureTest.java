@@ -123,6 +123,19 @@ class CellFailureTest {
         assertEquals("ArithmeticException: / by zero", failed.report().get(0));
         assertTrue(failed.report().contains("line 3:     return IntStream.of(1, 2).map(i -> i / n).sum();"));
         assertEquals(3, failed.line(), () -> String.join("\n", failed.report()));
+        assertTrue(failed.report().get(1).startsWith("in the cell run as number "), failed.report()::toString);
+        assertTrue(failed.report().containsAll(List.of("in this cell:", "line 3:     share(none);")));
+    }
+
+    @Test
+    void names_the_cell_whose_declaration_no_longer_holds() {
+        evaluator.run("class Batch { int size; }", outlet);
+        evaluator.run("\nint sizeOf(Batch b) { return b.size; }", outlet);
+        evaluator.run("class Batch { }", outlet);
+        Outcome.Failed failed = failure("int fine = 1;\nsizeOf(new Batch())");
+        assertEquals(2, failed.line(), () -> String.join("\n", failed.report()));
+        assertTrue(failed.report().get(0).startsWith("this needs a declaration of the cell run as number"));
+        assertTrue(failed.report().contains("line 2: int sizeOf(Batch b) { return b.size; }"), failed.report()::toString);
     }
 
     @Test
@@ -162,6 +175,19 @@ class CellFailureTest {
         assertEquals("StackOverflowError", failed.kind());
         assertEquals(2, failed.line());
         assertTrue(failed.report().size() < 20, "a short report");
+    }
+
+    @Test
+    void survives_an_expression_beyond_the_compiler() {
+        Outcome.Failed failed = failure("1" + " + 1".repeat(20_000));
+        assertEquals("an expression of this cell is nested too deeply to be compiled", failed.message());
+        evaluator.run("int afterwards = 5;", outlet);
+    }
+
+    @Test
+    void says_that_a_result_cannot_be_shown_whatever_its_text_throws() {
+        evaluator.run("class Odd { public String toString() { throw new AssertionError(\"odd\"); } }", outlet);
+        assertEquals("AssertionError", failure("new Odd()").kind());
     }
 
     @Test

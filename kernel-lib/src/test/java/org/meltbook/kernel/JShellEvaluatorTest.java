@@ -170,6 +170,7 @@ class JShellEvaluatorTest {
     @Test
     void takes_a_declaration_that_is_used_before_what_it_needs() {
         assertEquals("ok", result("class Early { Late late; }\nvar early = new Early();\nclass Late {}\n\"ok\""));
+        assertTrue(givesNothing("class Sooner { Later l; }\n3 + 4\n;class Later {}"));
     }
 
     @Test

@@ -5,12 +5,18 @@ import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import com.google.gson.JsonObject;
+import java.io.File;
 import java.io.IOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Map;
 import java.util.concurrent.TimeUnit;
+import java.util.jar.Attributes;
+import java.util.jar.JarOutputStream;
+import java.util.jar.Manifest;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
@@ -23,6 +29,8 @@ import org.meltbook.kernel.WireClient.Exchange;
 @TestInstance(TestInstance.Lifecycle.PER_CLASS)
 @Timeout(value = 120, unit = TimeUnit.SECONDS)
 class JupyterKernelTest {
+    private static final String MAIN = KernelProgram.class.getName();
+
     @TempDir
     static Path folder;
 
@@ -39,16 +47,33 @@ class JupyterKernelTest {
     }
 
     private static WireClient launched() throws IOException {
-        return WireClient.start(
-                folder,
-                List.of(
-                        Path.of(System.getProperty("java.home"), "bin", "java").toString(),
-                        "-Xmx256m",
-                        "-XX:+UseSerialGC",
-                        "-Djava.awt.headless=true",
-                        "-cp",
-                        System.getProperty("java.class.path"),
-                        KernelProgram.class.getName()));
+        return WireClient.start(folder, program("-cp", System.getProperty("java.class.path"), MAIN), Map.of());
+    }
+
+    private static List<String> program(String... arguments) {
+        List<String> command = new ArrayList<>();
+        command.add(Path.of(System.getProperty("java.home"), "bin", "java").toString());
+        command.addAll(List.of("-Xmx256m", "-XX:+UseSerialGC", "-Djava.awt.headless=true"));
+        command.addAll(List.of(arguments));
+        return command;
+    }
+
+    /** A jar that holds only a manifest: the entries that the packaged program has, and this test's class path. */
+    private static Path jarOfThisClassPath() throws IOException {
+        Manifest manifest = new Manifest();
+        Attributes entries = manifest.getMainAttributes();
+        entries.put(Attributes.Name.MANIFEST_VERSION, "1.0");
+        entries.put(Attributes.Name.MAIN_CLASS, MAIN);
+        entries.putValue("Launcher-Agent-Class", ExitGuard.class.getName());
+        entries.putValue("Can-Retransform-Classes", "true");
+        List<String> urls = new ArrayList<>();
+        for (String entry : System.getProperty("java.class.path").split(File.pathSeparator)) {
+            urls.add(Path.of(entry).toUri().toString());
+        }
+        entries.put(Attributes.Name.CLASS_PATH, String.join(" ", urls));
+        Path jar = folder.resolve("kernel.jar");
+        new JarOutputStream(Files.newOutputStream(jar), manifest).close();
+        return jar;
     }
 
     @Test
@@ -279,12 +304,41 @@ class JupyterKernelTest {
     }
 
     @Test
+    void says_no_to_an_exit_by_reflection_and_ends_itself_all_the_same() throws Exception {
+        try (WireClient other = WireClient.start(folder, program("-jar", jarOfThisClassPath().toString()), Map.of())) {
+            for (String name : List.of("exit", "halt")) {
+                Exchange ran = other.execute("var way = Runtime.class.getMethod(\"" + name + "\", int.class);\n"
+                        + "way.invoke(Runtime.getRuntime(), 3);");
+                assertEquals("InvocationTargetException", ran.content().get("ename").getAsString());
+                String said = ran.content().getAsJsonArray("traceback").toString();
+                assertTrue(said.contains("SecurityException: " + ExitRefused.MESSAGE), said);
+            }
+            assertEquals("42", other.execute("42").resultText());
+            other.exchange("shutdown_request", Map.of("restart", false));
+            assertTrue(other.process.waitFor(30, TimeUnit.SECONDS), "still there");
+            assertEquals(0, other.process.exitValue());
+        }
+    }
+
+    @Test
+    void ends_when_its_parent_ends() throws Exception {
+        Process parent = new ProcessBuilder(program("-cp", System.getProperty("java.class.path"), MAIN)).start();
+        List<String> command = program("-cp", System.getProperty("java.class.path"), MAIN);
+        try (WireClient other =
+                WireClient.start(folder, command, Map.of("JPY_PARENT_PID", Long.toString(parent.pid())))) {
+            assertEquals("42", other.execute("42").resultText());
+            parent.getOutputStream().close();
+            assertTrue(other.process.waitFor(30, TimeUnit.SECONDS), "still there");
+        } finally {
+            parent.destroy();
+        }
+    }
+
+    @Test
     void says_why_it_cannot_serve() throws Exception {
-        List<String> command = new ArrayList<>(List.of(
-                Path.of(System.getProperty("java.home"), "bin", "java").toString(),
-                "-cp", System.getProperty("java.class.path"), KernelProgram.class.getName(), "no-such-file.json"));
+        List<String> command = program("-cp", System.getProperty("java.class.path"), MAIN, "no-such-file.json");
         Process process = new ProcessBuilder(command).redirectErrorStream(true).start();
-        String said = new String(process.getInputStream().readAllBytes());
+        String said = new String(process.getInputStream().readAllBytes(), StandardCharsets.UTF_8);
         assertEquals(1, process.waitFor());
         assertTrue(said.contains("no-such-file.json"), said);
     }

@@ -49,7 +49,7 @@ final class WireClient implements AutoCloseable {
     }
 
     /** Starts the program with a connection file in {@code folder} and connects to it. */
-    static WireClient start(Path folder, List<String> command) throws IOException {
+    static WireClient start(Path folder, List<String> command, Map<String, String> environment) throws IOException {
         List<Integer> ports = freePorts(5);
         String key = UUID.randomUUID().toString();
         Path file = folder.resolve("connection-" + key + ".json");
@@ -61,9 +61,11 @@ final class WireClient implements AutoCloseable {
                         "stdin_port", ports.get(3), "hb_port", ports.get(4))));
         List<String> whole = new ArrayList<>(command);
         whole.add(file.toString());
-        Process process = new ProcessBuilder(whole).redirectErrorStream(true)
-                .redirectOutput(folder.resolve("kernel-" + key + ".log").toFile())
-                .start();
+        ProcessBuilder builder = new ProcessBuilder(whole)
+                .redirectErrorStream(true)
+                .redirectOutput(folder.resolve("kernel-" + key + ".log").toFile());
+        builder.environment().putAll(environment);
+        Process process = builder.start();
         WireClient client = new WireClient(process, key, ports);
         client.untilListening();
         return client;
