@@ -1,0 +1,19 @@
+package org.meltbook.scenario;
+
+import java.nio.file.Files;
+import java.nio.file.Path;
+
+/** Where the checked-in data lie, whichever folder of the repository the program was started in. */
+final class Repository {
+    private Repository() {}
+
+    /** The {@code data} folder of the repository. */
+    static Path data() {
+        for (Path folder = Path.of("").toAbsolutePath(); folder != null; folder = folder.getParent()) {
+            if (Files.isRegularFile(folder.resolve("data/README.md"))) {
+                return folder.resolve("data");
+            }
+        }
+        throw new IllegalStateException("no folder above " + Path.of("").toAbsolutePath() + " holds data/README.md");
+    }
+}
