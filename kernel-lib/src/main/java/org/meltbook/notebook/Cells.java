@@ -4,10 +4,14 @@ import java.nio.file.Path;
 import java.util.List;
 import org.knowm.xchart.XYChart;
 import org.meltbook.base.RangeException;
+import org.meltbook.base.Rows;
 import org.meltbook.chart.Drawing;
 import org.meltbook.figure.Exhibit;
 import org.meltbook.figure.Figure;
 import org.meltbook.kernel.Cell;
+import org.meltbook.measure.Measurement;
+import org.meltbook.table.Tables;
+import tech.tablesaw.api.Table;
 
 /** What every cell can call by its bare name. */
 public final class Cells {
@@ -40,6 +44,33 @@ public final class Cells {
             return degrees + ZERO_CELSIUS;
         }
         throw new RangeException("a temperature lies at or above −273.15 °C, found " + degrees + " °C");
+    }
+
+    /** The table as a Tablesaw table, to go on with. */
+    public static Table table(Rows rows) {
+        return Tables.of(rows);
+    }
+
+    /** Every number of a measurement as a Tablesaw table: a view, of which changes do not come back. */
+    public static Table table(Measurement measurement) {
+        return Tables.of(measurement);
+    }
+
+    /**
+     * The first table of a result as a Tablesaw table; {@code tables(x)} gives all.
+     *
+     * @throws RangeException if it has no table
+     */
+    public static Table table(Exhibit exhibit) {
+        return exhibit.rows().stream()
+                .findFirst()
+                .map(Cells::table)
+                .orElseThrow(() -> new RangeException("no table in: " + exhibit.headline()));
+    }
+
+    /** Every table of a result as a Tablesaw table. */
+    public static List<Table> tables(Exhibit exhibit) {
+        return exhibit.rows().stream().map(Cells::table).toList();
     }
 
     /** The figure as a chart of the chart library, to go on with. */

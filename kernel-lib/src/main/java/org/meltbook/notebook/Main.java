@@ -69,14 +69,15 @@ public final class Main {
     /** Does what the arguments ask, and gives the exit code. */
     static int run(PrintStream out, PrintStream err, String... arguments) {
         return new CommandLine(new Main(out))
-                .setOut(new PrintWriter(out, true, StandardCharsets.UTF_8))
-                .setErr(new PrintWriter(err, true, StandardCharsets.UTF_8))
-                .setExecutionExceptionHandler((e, command, parsed) -> refuse(e, err))
                 .addSubcommand(new Run(out, err))
                 .addSubcommand(new TidyUp(out))
                 .addSubcommand(new Attach(out))
                 .addSubcommand(new Detach(out))
                 .addSubcommand(new Kernel())
+                // These reach only the subcommands that are there already.
+                .setOut(new PrintWriter(out, true, StandardCharsets.UTF_8))
+                .setErr(new PrintWriter(err, true, StandardCharsets.UTF_8))
+                .setExecutionExceptionHandler((e, command, parsed) -> refuse(e, err))
                 .execute(arguments.length == 0 ? new String[] {"--help"} : arguments);
     }
 

@@ -15,6 +15,7 @@ import org.meltbook.figure.Exhibit;
 import org.meltbook.figure.Figure;
 import org.meltbook.report.HtmlTable;
 import org.meltbook.units.Prediction;
+import tech.tablesaw.table.Relation;
 
 /**
  * How values show themselves in a notebook: exhibits, tables and predictions as HTML, figures and charts as pictures, each
@@ -36,6 +37,7 @@ public final class Renderers {
     public static void install(Renderer renderer) {
         rich(renderer, Exhibit.class, Renderers::show);
         rich(renderer, Rows.class, Renderers::show);
+        rich(renderer, Relation.class, (table, data) -> show(TableRows.of(table), data));
         rich(renderer, Prediction.class, Renderers::show);
         rich(renderer, Collection.class, Renderers::showEach);
         picture(renderer, Figure.class, Renderers::show);

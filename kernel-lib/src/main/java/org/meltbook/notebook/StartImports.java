@@ -12,6 +12,11 @@ final class StartImports {
             "import org.meltbook.units.*;",
             "import org.meltbook.figure.*;",
             "import org.meltbook.measure.*;",
+            "import org.meltbook.intake.*;",
+            "import org.meltbook.viscosity.*;",
+            "import org.meltbook.spectrum.*;",
+            "import org.meltbook.flow.*;",
+            "import org.meltbook.constitutive.*;",
             "import tech.tablesaw.api.*;",
             "import static org.meltbook.notebook.Cells.*;");
 
