@@ -20,7 +20,8 @@ final class Answers {
     private Answers() {}
 
     static JsonObject kernelInfo() {
-        String version = Optional.ofNullable(Answers.class.getPackage().getImplementationVersion()).orElse("unpackaged");
+        String version = Optional.ofNullable(Answers.class.getPackage().getImplementationVersion())
+                .orElse("unpackaged");
         String java = Integer.toString(Runtime.version().feature());
         LanguageInfo language = new LanguageInfo.Builder(LANGUAGE)
                 .version(java)
@@ -37,8 +38,7 @@ final class Answers {
         CompleteRequest request = Wire.GSON.fromJson(content, CompleteRequest.class);
         String cell = request.getCode();
         Evaluator.Completion found = evaluator.complete(cell, units(cell, request.getCursorPos()));
-        return ok(new CompleteReply(
-                found.options(), points(cell, found.start()), points(cell, found.end()), Map.of()));
+        return ok(new CompleteReply(found.options(), points(cell, found.start()), points(cell, found.end()), Map.of()));
     }
 
     static JsonObject inspection(JsonObject content, Evaluator evaluator) {
@@ -75,7 +75,8 @@ final class Answers {
 
     static JsonObject shutdown(JsonObject content) {
         JsonObject reply = new JsonObject();
-        reply.addProperty("restart", content.has("restart") && content.get("restart").getAsBoolean());
+        reply.addProperty(
+                "restart", content.has("restart") && content.get("restart").getAsBoolean());
         return ok(reply);
     }
 

@@ -34,7 +34,8 @@ public final class Attachment {
 
     /** The attachment for the user who runs this process. */
     public static Attachment forUser() {
-        return in(dataFolder(System.getenv(), System.getProperty("os.name", ""), Path.of(System.getProperty("user.home"))));
+        return in(dataFolder(
+                System.getenv(), System.getProperty("os.name", ""), Path.of(System.getProperty("user.home"))));
     }
 
     /** The attachment in the given Jupyter data folder. */
@@ -111,7 +112,8 @@ public final class Attachment {
             throw new AttachmentException(
                     "cannot attach: " + folder + " exists and was not made by attach; move it away");
         }
-        Path aside = folder.resolveSibling("." + KERNEL + "-" + ProcessHandle.current().pid());
+        Path aside = folder.resolveSibling(
+                "." + KERNEL + "-" + ProcessHandle.current().pid());
         try {
             Files.createDirectories(aside);
             Files.copy(jar, aside.resolve(JAR), StandardCopyOption.REPLACE_EXISTING);
@@ -168,7 +170,11 @@ public final class Attachment {
         spec.put("display_name", "Java (Meltbook)");
         spec.put("language", "java");
         spec.put("interrupt_mode", "message");
-        return new GsonBuilder().setPrettyPrinting().disableHtmlEscaping().create().toJson(spec) + "\n";
+        return new GsonBuilder()
+                        .setPrettyPrinting()
+                        .disableHtmlEscaping()
+                        .create()
+                        .toJson(spec) + "\n";
     }
 
     private static String javaProgram() {
@@ -197,7 +203,8 @@ public final class Attachment {
         try {
             removeOurFiles(aside);
         } catch (IOException e) {
-            // What is left is a hidden folder without meaning to Jupyter; the first failure, if any, is the one to tell.
+            // What is left is a hidden folder without meaning to Jupyter; the first failure, if any, is the one to
+            // tell.
             return;
         }
     }
@@ -207,7 +214,9 @@ public final class Attachment {
     }
 
     private static Optional<Path> folderNamed(Map<String, String> environment, String variable) {
-        return Optional.ofNullable(environment.get(variable)).filter(v -> !v.isBlank()).map(Path::of);
+        return Optional.ofNullable(environment.get(variable))
+                .filter(v -> !v.isBlank())
+                .map(Path::of);
     }
 
     private static String reason(Exception e) {

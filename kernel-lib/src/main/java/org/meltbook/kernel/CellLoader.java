@@ -24,7 +24,8 @@ final class CellLoader implements LoaderDelegate {
                 loader.declared.put(each.name(), CellClassRewriter.rewrite(each.bytecodes()));
             }
             for (int i = 0; i < classes.length; i++) {
-                // Asking for the methods links the class, so that a broken one fails here and not in the middle of a cell.
+                // Asking for the methods links the class, so that a broken one fails here and not in the middle of a
+                // cell.
                 loader.loadClass(classes[i].name()).getDeclaredMethods();
                 installed[i] = true;
             }

@@ -4,7 +4,8 @@ package org.meltbook.kernel;
 record CellText(String text) {
     /** The line, counted from 1, of an offset. */
     int lineAt(int offset) {
-        return 1 + (int) text.substring(0, offset).chars().filter(c -> c == '\n').count();
+        return 1
+                + (int) text.substring(0, offset).chars().filter(c -> c == '\n').count();
     }
 
     /** The letters of a line, counted from 1, without its end. */

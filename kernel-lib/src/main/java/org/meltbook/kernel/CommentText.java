@@ -29,8 +29,8 @@ import java.util.Set;
 record CommentText(String description, Map<String, String> parts) {
     private static final Set<String> BREAKS = Set.of("p", "ul", "ol", "pre", "br", "dl", "table", "tr", "h2", "h3");
     private static final Set<String> KEPT = Set.of(
-            "p", "ul", "ol", "li", "pre", "br", "b", "i", "em", "strong", "sub", "sup", "code", "dl", "dt", "dd", "table",
-            "tr", "td", "th");
+            "p", "ul", "ol", "li", "pre", "br", "b", "i", "em", "strong", "sub", "sup", "code", "dl", "dt", "dd",
+            "table", "tr", "td", "th");
 
     static CommentText of(DocCommentTree comment) {
         Map<String, String> parts = new LinkedHashMap<>();
@@ -100,7 +100,8 @@ record CommentText(String description, Map<String, String> parts) {
             return literal.getKind() == DocTree.Kind.CODE ? "<code>" + body + "</code>" : body;
         }
         if (tree instanceof LinkTree link) {
-            String shown = link.getLabel().isEmpty() ? reference(link.getReference().getSignature()) : html(link.getLabel());
+            String shown =
+                    link.getLabel().isEmpty() ? reference(link.getReference().getSignature()) : html(link.getLabel());
             return "<code>" + shown + "</code>";
         }
         if (tree instanceof StartElementTree start) {

@@ -84,7 +84,8 @@ final class Execution {
     boolean abortsAfter(Envelope request, Optional<JsonObject> reply) {
         return request.type().equals("execute_request")
                 && flag(request, "stop_on_error", true)
-                && reply.filter(r -> r.get("status").getAsString().equals("error")).isPresent();
+                && reply.filter(r -> r.get("status").getAsString().equals("error"))
+                        .isPresent();
     }
 
     /** The reply to a cell that is not run because one before it failed. */

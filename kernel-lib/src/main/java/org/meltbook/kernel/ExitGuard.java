@@ -55,7 +55,7 @@ public final class ExitGuard {
         }
     }
 
-    /** The class file of {@code Runtime} with a look at the property at the start of its two methods that end the process. */
+    /** The class file of {@code Runtime} whose two methods that end the process first look at the property. */
     static byte[] refusing(byte[] classFile) {
         ClassReader reader = new ClassReader(classFile);
         ClassWriter writer = new ClassWriter(reader, ClassWriter.COMPUTE_MAXS);
@@ -84,7 +84,11 @@ public final class ExitGuard {
             Label allowed = new Label();
             visitLdcInsn(PROPERTY);
             visitMethodInsn(
-                    Opcodes.INVOKESTATIC, "java/lang/System", "getProperty", "(Ljava/lang/String;)Ljava/lang/String;", false);
+                    Opcodes.INVOKESTATIC,
+                    "java/lang/System",
+                    "getProperty",
+                    "(Ljava/lang/String;)Ljava/lang/String;",
+                    false);
             visitJumpInsn(Opcodes.IFNULL, allowed);
             visitTypeInsn(Opcodes.NEW, "java/lang/SecurityException");
             visitInsn(Opcodes.DUP);

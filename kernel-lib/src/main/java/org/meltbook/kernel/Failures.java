@@ -93,14 +93,15 @@ final class Failures {
         List<String> report = new ArrayList<>();
         boolean elsewhere = origin.number != current.number;
         if (elsewhere) {
-            report.add("this needs a declaration of the cell run as number " + origin.number + ", which no longer holds:");
+            report.add(
+                    "this needs a declaration of the cell run as number " + origin.number + ", which no longer holds:");
         }
         report.addAll(pointed(origin.cell, at, message));
         int line = elsewhere ? current.cell.lineAt(current.offset) : origin.cell.lineAt(at);
         return new Outcome.Failed(Outcome.Reason.COMPILE, "CompileError", message, line, report);
     }
 
-    /** Where in a source the name stands that JShell misses, which it calls {@code class Egg} or {@code method odd(int)}. */
+    /** Where the name stands that JShell misses and tells as {@code class Egg} or {@code method odd(int)}. */
     private static int placeOf(String missing, String source) {
         String name = missing.replaceAll("\\(.*", "").replaceAll(".*\\s", "");
         Matcher place = Pattern.compile("\\b" + Pattern.quote(name) + "\\b").matcher(CellText.masked(source));
@@ -207,7 +208,9 @@ final class Failures {
     /** The line with its number, and a caret below: under the given column, or under the first letter if negative. */
     private static List<String> caret(CellText cell, int line, int column) {
         String code = cell.line(line);
-        int under = column >= 0 ? Math.min(column, code.length()) : code.length() - code.stripLeading().length();
+        int under = column >= 0
+                ? Math.min(column, code.length())
+                : code.length() - code.stripLeading().length();
         String number = "line " + line + ": ";
         String indent = code.substring(0, under).replaceAll("[^\\t]", " ");
         return List.of(number + code, " ".repeat(number.length()) + indent + "^");

@@ -61,7 +61,7 @@ final class InProcessControl extends DirectExecutionControl {
         lastClass = null;
     }
 
-    /** Lets go of the object in a variable of the last snippet, so that a result nobody can name is not kept for ever. */
+    /** Lets go of the object in a variable of the last snippet: a result that nobody can name is not kept for ever. */
     void release(String variable) {
         try {
             Field field = lastClass.getDeclaredField(variable);

@@ -108,7 +108,8 @@ public final class JShellEvaluator implements Evaluator {
     /** The next piece in order; but while a declaration still needs something, declarations come before statements. */
     private Piece next(Deque<Piece> waiting, List<Declared> declared) {
         if (waiting.size() > 1 && declared.stream().anyMatch(d -> isOpen(shell.status(d.snippet)))) {
-            Optional<Piece> declaration = waiting.stream().filter(this::declares).findFirst();
+            Optional<Piece> declaration =
+                    waiting.stream().filter(this::declares).findFirst();
             if (declaration.isPresent()) {
                 waiting.remove(declaration.get());
                 return declaration.get();
@@ -280,7 +281,8 @@ public final class JShellEvaluator implements Evaluator {
     public Completeness completeness(String cell) {
         return split(new CellText(cell), 0)
                 .broken
-                .map(rest -> switch (analysis.analyzeCompletion(cell.substring(rest.offset())).completeness()) {
+                .map(rest -> switch (analysis.analyzeCompletion(cell.substring(rest.offset()))
+                        .completeness()) {
                     case DEFINITELY_INCOMPLETE, CONSIDERED_INCOMPLETE -> Completeness.INCOMPLETE;
                     default -> Completeness.INVALID;
                 })

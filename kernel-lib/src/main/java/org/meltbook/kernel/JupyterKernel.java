@@ -50,8 +50,7 @@ public final class JupyterKernel {
      */
     public static void serve(Path connectionFile, Settings settings) {
         try {
-            KernelConnectionProperties connection =
-                    KernelConnectionProperties.parse(Files.readString(connectionFile));
+            KernelConnectionProperties connection = KernelConnectionProperties.parse(Files.readString(connectionFile));
             if (!"tcp".equals(connection.getTransport())) {
                 throw new IllegalArgumentException(
                         connectionFile + ": transport '" + connection.getTransport() + "', expected 'tcp'");

@@ -35,7 +35,8 @@ record Named(String type, String name, List<String> parameters, boolean method) 
         Matcher field = FIELD.matcher(plain);
         if (field.matches()) {
             boolean local = field.group(1) == null;
-            return Optional.of(local ? type(field.group(3)) : new Named(field.group(1), field.group(2), List.of(), false));
+            return Optional.of(
+                    local ? type(field.group(3)) : new Named(field.group(1), field.group(2), List.of(), false));
         }
         return TYPE.matcher(plain).matches() ? Optional.of(type(plain)) : Optional.empty();
     }

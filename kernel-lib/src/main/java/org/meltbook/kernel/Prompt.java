@@ -81,7 +81,8 @@ final class Prompt {
         while (!question.answer.isDone() && !closing()) {
             wire.poll(socket, 0)
                     .filter(m -> m.type().equals("input_reply") && m.content().has("value"))
-                    .ifPresent(m -> question.answer.complete(m.content().get("value").getAsString()));
+                    .ifPresent(m ->
+                            question.answer.complete(m.content().get("value").getAsString()));
         }
         question.answer.completeExceptionally(new IOException("the kernel shuts down"));
     }

@@ -13,12 +13,12 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.io.UncheckedIOException;
 import java.io.Writer;
+import java.net.JarURLConnection;
 import java.net.URI;
 import java.net.URISyntaxException;
 import java.net.URL;
+import java.net.URLConnection;
 import java.nio.charset.StandardCharsets;
-import java.nio.file.FileSystem;
-import java.nio.file.FileSystems;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
@@ -27,6 +27,8 @@ import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
+import java.util.jar.JarEntry;
+import java.util.jar.JarFile;
 import java.util.stream.Stream;
 import javax.tools.JavaCompiler;
 import javax.tools.JavaFileObject;
@@ -80,7 +82,7 @@ final class SourceComments {
                 .findFirst();
     }
 
-    /** What a simple name may mean in the declaration of {@code type}: a neighbour nested in the same type, or a file. */
+    /** What a simple name may mean in the declaration of {@code type}: a neighbour in the outer type, or a file. */
     private static Stream<String> namesOf(String simple, String type) {
         int dot = type.lastIndexOf('.');
         return dot < 0 ? Stream.of(simple) : Stream.of(type.substring(0, dot + 1) + simple, simple);
@@ -113,18 +115,28 @@ final class SourceComments {
         try {
             List<String> all = new ArrayList<>();
             for (URL root : Collections.list(classes.getResources(ROOT))) {
-                URI place = root.toURI();
-                if (place.getScheme().equals("jar")) {
-                    try (FileSystem jar = FileSystems.newFileSystem(place, Map.of())) {
-                        all.addAll(below(jar.getPath(ROOT)));
-                    }
+                URLConnection connection = root.openConnection();
+                if (connection instanceof JarURLConnection jar) {
+                    all.addAll(within(jar));
                 } else {
-                    all.addAll(below(Path.of(place)));
+                    all.addAll(below(Path.of(root.toURI())));
                 }
             }
             return all;
         } catch (IOException | URISyntaxException e) {
             throw new IllegalStateException("the sources on the class path cannot be listed", e);
+        }
+    }
+
+    private static List<String> within(JarURLConnection connection) throws IOException {
+        connection.setUseCaches(false);
+        try (JarFile jar = connection.getJarFile()) {
+            return jar.stream()
+                    .map(JarEntry::getName)
+                    .filter(name -> name.startsWith(ROOT + "/") && name.endsWith(SUFFIX))
+                    .map(name -> name.substring(ROOT.length() + 1))
+                    .sorted()
+                    .toList();
         }
     }
 
@@ -184,7 +196,8 @@ final class SourceComments {
 
         private static Optional<TreePath> declared(TreePath in, List<? extends Tree> trees, String name) {
             return trees.stream()
-                    .filter(tree -> tree instanceof ClassTree type && type.getSimpleName().contentEquals(name))
+                    .filter(tree -> tree instanceof ClassTree type
+                            && type.getSimpleName().contentEquals(name))
                     .map(tree -> new TreePath(in, tree))
                     .findFirst();
         }
@@ -205,7 +218,9 @@ final class SourceComments {
         /** The parameter's type as it stands in the source, with the dots of a variable count. */
         private static String declaredType(VariableTree parameter) {
             String whole = parameter.toString();
-            return whole.contains("...") ? parameter.getType().toString().replace("[]", "") + "..." : parameter.getType().toString();
+            return whole.contains("...")
+                    ? parameter.getType().toString().replace("[]", "") + "..."
+                    : parameter.getType().toString();
         }
     }
 }

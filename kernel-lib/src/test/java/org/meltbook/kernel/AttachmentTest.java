@@ -37,13 +37,15 @@ class AttachmentTest {
     void looks_where_jupyter_looks() {
         Path home = Path.of("/home/q");
         assertEquals(
-                Path.of("/data"), Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", "/data", "XDG_DATA_HOME", "/x"), "Linux", home));
+                Path.of("/data"),
+                Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", "/data", "XDG_DATA_HOME", "/x"), "Linux", home));
         assertEquals(Path.of("/home/q/.local/share/jupyter"), Attachment.dataFolder(Map.of(), "Linux", home));
         assertEquals(Path.of("/x/jupyter"), Attachment.dataFolder(Map.of("XDG_DATA_HOME", "/x"), "Linux", home));
         assertEquals(Path.of("/home/q/Library/Jupyter"), Attachment.dataFolder(Map.of(), "Mac OS X", home));
         assertEquals(Path.of("/roam/jupyter"), Attachment.dataFolder(Map.of("APPDATA", "/roam"), "Windows 11", home));
         assertEquals(
-                Path.of("/home/q/.local/share/jupyter"), Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", " "), "Linux", home));
+                Path.of("/home/q/.local/share/jupyter"),
+                Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", " "), "Linux", home));
     }
 
     @Test
@@ -55,7 +57,8 @@ class AttachmentTest {
         assertEquals(List.of("kernel.json", "meltbook.jar"), names(kernel));
         assertEquals(List.of("meltbook"), names(kernel.getParent()));
         assertEquals("the program", Files.readString(kernel.resolve("meltbook.jar")));
-        JsonObject spec = JsonParser.parseString(Files.readString(kernel.resolve("kernel.json"))).getAsJsonObject();
+        JsonObject spec = JsonParser.parseString(Files.readString(kernel.resolve("kernel.json")))
+                .getAsJsonObject();
         assertEquals("Java (Meltbook)", spec.get("display_name").getAsString());
         assertEquals("java", spec.get("language").getAsString());
         assertEquals("message", spec.get("interrupt_mode").getAsString());
@@ -66,7 +69,10 @@ class AttachmentTest {
                 "-jar", kernel.resolve("meltbook.jar").toAbsolutePath().toString(), "kernel", "{connection_file}");
         assertEquals(
                 tail,
-                Stream.iterate(command.size() - 4, i -> i + 1).limit(4).map(i -> command.get(i).getAsString()).toList());
+                Stream.iterate(command.size() - 4, i -> i + 1)
+                        .limit(4)
+                        .map(i -> command.get(i).getAsString())
+                        .toList());
     }
 
     @Test

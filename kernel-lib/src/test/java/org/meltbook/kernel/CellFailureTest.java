@@ -81,7 +81,8 @@ class CellFailureTest {
     }
 
     @ParameterizedTest
-    @ValueSource(strings = {"class A {", "foo(", "}", "int x = 1; }", "\"open", "if (true)", "@Deprecated", "#", "/* open"})
+    @ValueSource(
+            strings = {"class A {", "foo(", "}", "int x = 1; }", "\"open", "if (true)", "@Deprecated", "#", "/* open"})
     void names_the_line_of_text_that_is_no_java(String code) {
         Outcome.Failed failed = failure("int fine = 1;\n" + code);
         assertEquals(Outcome.Reason.COMPILE, failed.reason());
@@ -135,7 +136,8 @@ class CellFailureTest {
         Outcome.Failed failed = failure("int fine = 1;\nsizeOf(new Batch())");
         assertEquals(2, failed.line(), () -> String.join("\n", failed.report()));
         assertTrue(failed.report().get(0).startsWith("this needs a declaration of the cell run as number"));
-        assertTrue(failed.report().contains("line 2: int sizeOf(Batch b) { return b.size; }"), failed.report()::toString);
+        assertTrue(
+                failed.report().contains("line 2: int sizeOf(Batch b) { return b.size; }"), failed.report()::toString);
     }
 
     @Test
@@ -150,7 +152,9 @@ class CellFailureTest {
     void says_which_value_cannot_be_shown() {
         evaluator.run("class Shy { public String toString() { throw new IllegalStateException(\"no\"); } }", outlet);
         Outcome.Failed failed = failure("new Shy()");
-        assertEquals("the result cannot be shown: IllegalStateException: no", failed.report().get(0));
+        assertEquals(
+                "the result cannot be shown: IllegalStateException: no",
+                failed.report().get(0));
         assertEquals(1, failed.line());
     }
 
@@ -192,7 +196,8 @@ class CellFailureTest {
 
     @Test
     void survives_an_exhausted_heap() {
-        Outcome.Failed failed = failure("var hoard = new ArrayList<long[]>();\nfor (;;) hoard.add(new long[8_000_000]);");
+        Outcome.Failed failed =
+                failure("var hoard = new ArrayList<long[]>();\nfor (;;) hoard.add(new long[8_000_000]);");
         assertEquals("OutOfMemoryError", failed.kind());
         assertEquals(2, failed.line());
         evaluator.run("hoard = null;", outlet);

@@ -4,14 +4,23 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import java.io.IOException;
+import java.net.URL;
+import java.net.URLClassLoader;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
 import java.util.List;
 import java.util.Optional;
 import java.util.concurrent.TimeUnit;
+import java.util.jar.JarEntry;
+import java.util.jar.JarOutputStream;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.TestInstance;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.io.TempDir;
 
 /** What a tooltip says: the signature as the compiler sees it, and the doc comment as it stands in the source. */
 @TestInstance(TestInstance.Lifecycle.PER_CLASS)
@@ -62,8 +71,10 @@ class InspectionTest {
     @Test
     void keeps_overloads_apart() {
         String text = text("NumberText.of(");
-        assertTrue(text.contains("String NumberText.of(double value, int digits)\n\n"
-                + "The number with the given count of significant digits."), text);
+        assertTrue(
+                text.contains("String NumberText.of(double value, int digits)\n\n"
+                        + "The number with the given count of significant digits."),
+                text);
         assertTrue(text.contains("\n  unit: text of the unit, or blank for none"), text);
     }
 
@@ -83,7 +94,8 @@ class InspectionTest {
     @Test
     void tells_of_a_nested_type_its_constructor_and_its_parts() {
         assertTrue(text("Rows.NumberColumn").contains("A column of numbers."));
-        assertTrue(text("new Rows.NumberColumn(").contains("\n  unit: their unit as text; blank or 1 if they have none"));
+        assertTrue(
+                text("new Rows.NumberColumn(").contains("\n  unit: their unit as text; blank or 1 if they have none"));
         evaluator.run("Rows.NumberColumn numbers = null;", new Collected());
         assertTrue(text("numbers.unit").endsWith("\n\ntheir unit as text; blank or 1 if they have none"));
         assertTrue(text("Rows.titled(\"a\").note(").contains("Adds a remark below the table."));
@@ -113,6 +125,31 @@ class InspectionTest {
     void tells_of_what_a_cell_declared() {
         evaluator.run("int twice(int x) { return 2 * x; }", new Collected());
         assertTrue(text("twice").contains("int twice(int x)"), text("twice"));
+    }
+
+    @Test
+    void reads_sources_from_a_jar(@TempDir Path folder) throws IOException {
+        Path jar = folder.resolve("more.jar");
+        try (JarOutputStream out = new JarOutputStream(Files.newOutputStream(jar))) {
+            for (String name : List.of("META-INF/meltbook/sources/", "META-INF/meltbook/sources/shop/Press.java")) {
+                out.putNextEntry(new JarEntry(name));
+                if (name.endsWith("java")) {
+                    out.write("package shop; /** Presses plates. */ class Press { /** One. */ void run(int... n) {} }"
+                            .getBytes(StandardCharsets.UTF_8));
+                }
+                out.closeEntry();
+            }
+        }
+        try (URLClassLoader classes = new URLClassLoader(new URL[] {jar.toUri().toURL()}, null)) {
+            SourceComments comments = new SourceComments(classes);
+            assertEquals("Presses plates.", found(comments, "shop.Press"));
+            assertEquals("One.", found(comments, "void Press.run(int... n)"));
+        }
+    }
+
+    private static String found(SourceComments comments, String signature) {
+        return CommentText.of(comments.of(Named.in(signature).orElseThrow()).orElseThrow())
+                .plain();
     }
 
     @Test

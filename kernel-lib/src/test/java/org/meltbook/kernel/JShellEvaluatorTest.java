@@ -27,11 +27,13 @@ class JShellEvaluatorTest {
     @BeforeAll
     void open() {
         Renderer renderer = new Renderer();
-        renderer.createRegistration(CharSequence.class).preferring("text/html").register((text, context) -> context
-                .renderIfRequested(
+        renderer.createRegistration(CharSequence.class)
+                .preferring("text/html")
+                .register((text, context) -> context.renderIfRequested(
                         org.dflib.jjava.jupyter.kernel.display.mime.MIMEType.TEXT_HTML, () -> "<b>" + text + "</b>"));
         evaluator = JShellEvaluator.open(Settings.plain()
-                .importing(List.of("import java.util.*;", "import org.meltbook.base.*;", "import org.meltbook.kernel.Cell;"))
+                .importing(List.of(
+                        "import java.util.*;", "import org.meltbook.base.*;", "import org.meltbook.kernel.Cell;"))
                 .rendering(renderer));
     }
 
@@ -50,7 +52,9 @@ class JShellEvaluatorTest {
 
     private boolean givesNothing(String cell) {
         Outcome outcome = evaluator.run(cell, outlet);
-        return assertInstanceOf(Outcome.Done.class, outcome, outcome::toString).result().isEmpty();
+        return assertInstanceOf(Outcome.Done.class, outcome, outcome::toString)
+                .result()
+                .isEmpty();
     }
 
     @Test
@@ -98,7 +102,9 @@ class JShellEvaluatorTest {
     void shows_values_on_the_way_and_replaces_them_by_name() {
         Collected own = new Collected();
         evaluator.run("Cell.display(\"first\");\nCell.display(1, \"n\");\nCell.update(2, \"n\");", own);
-        assertEquals(List.of("first", "1"), own.displays.stream().map(MimeBundle::plainText).toList());
+        assertEquals(
+                List.of("first", "1"),
+                own.displays.stream().map(MimeBundle::plainText).toList());
         assertEquals("2", own.updates.get(0).plainText());
         assertEquals("n", own.updates.get(0).displayId());
     }
@@ -144,7 +150,9 @@ class JShellEvaluatorTest {
         Collected own = new Collected();
         own.answers.add("240 °C");
         own.answers.add("12");
-        evaluator.run("var keys = new Scanner(System.in, \"UTF-8\");\nvar first = keys.nextLine();\nint n = keys.nextInt();", own);
+        evaluator.run(
+                "var keys = new Scanner(System.in, \"UTF-8\");\nvar first = keys.nextLine();\nint n = keys.nextInt();",
+                own);
         assertEquals("240 °C/12", result("first + \"/\" + n"));
     }
 
@@ -197,8 +205,7 @@ class JShellEvaluatorTest {
     void completes_a_member_and_says_where_it_goes() {
         String cell = "var title = \"η₀\";\ntitle.subs";
         Evaluator.Completion completion = evaluator.complete(cell, cell.length());
-        assertEquals(
-                Set.of("substring("), completion.options().stream().collect(Collectors.toSet()));
+        assertEquals(Set.of("substring("), completion.options().stream().collect(Collectors.toSet()));
         assertEquals(cell.length() - 4, completion.start());
         assertEquals(cell.length(), completion.end());
     }

@@ -25,7 +25,7 @@ import org.junit.jupiter.api.Timeout;
 import org.junit.jupiter.api.io.TempDir;
 import org.meltbook.kernel.WireClient.Exchange;
 
-/** A client over ZeroMQ speaks to the kernel in a process of its own; expectations are those of Jupyter messaging 5.3. */
+/** A client over ZeroMQ speaks to the kernel in its own process; expectations are those of Jupyter messaging 5.3. */
 @TestInstance(TestInstance.Lifecycle.PER_CLASS)
 @Timeout(value = 120, unit = TimeUnit.SECONDS)
 class JupyterKernelTest {
@@ -111,8 +111,10 @@ class JupyterKernelTest {
         assertEquals("!", ran.printed("stderr"));
         assertEquals("42", ran.resultText());
         int count = ran.content().get("execution_count").getAsInt();
-        assertEquals(count, ran.all("execute_result").get(0).get("execution_count").getAsInt());
-        assertEquals(count + 1, client.execute("1").content().get("execution_count").getAsInt());
+        assertEquals(
+                count, ran.all("execute_result").get(0).get("execution_count").getAsInt());
+        assertEquals(
+                count + 1, client.execute("1").content().get("execution_count").getAsInt());
     }
 
     @Test
@@ -136,7 +138,9 @@ class JupyterKernelTest {
     void keeps_silent_when_asked_to() {
         int before = client.execute("1").content().get("execution_count").getAsInt();
         Exchange ran = client.exchange("execute_request", Map.of("code", "41 + 1", "silent", true));
-        assertEquals(List.of("status", "status"), ran.broadcasts().stream().map(WireClient::type).toList());
+        assertEquals(
+                List.of("status", "status"),
+                ran.broadcasts().stream().map(WireClient::type).toList());
         assertEquals(before, ran.content().get("execution_count").getAsInt());
     }
 
@@ -147,7 +151,8 @@ class JupyterKernelTest {
         assertEquals("ArithmeticException", ran.content().get("ename").getAsString());
         assertEquals("/ by zero", ran.content().get("evalue").getAsString());
         JsonObject error = ran.all("error").get(0);
-        assertEquals("line 2: 1 / zero", error.getAsJsonArray("traceback").get(1).getAsString());
+        assertEquals(
+                "line 2: 1 / zero", error.getAsJsonArray("traceback").get(1).getAsString());
     }
 
     @Test
@@ -165,8 +170,8 @@ class JupyterKernelTest {
 
     @Test
     void runs_the_next_cell_after_a_failed_one_if_asked_not_to_stop() {
-        String failing = client.send(
-                "execute_request", Map.of("code", "throw new RuntimeException();", "stop_on_error", false));
+        String failing =
+                client.send("execute_request", Map.of("code", "throw new RuntimeException();", "stop_on_error", false));
         String waiting = client.send("execute_request", Map.of("code", "int still = 1;"));
         assertEquals("error", client.collect(failing).status());
         assertEquals("ok", client.collect(waiting).status());
@@ -178,15 +183,16 @@ class JupyterKernelTest {
         int points = code.codePointCount(0, code.length());
         Exchange found = client.exchange("complete_request", Map.of("code", code, "cursor_pos", points));
         assertEquals("ok", found.status());
-        assertEquals("substring(", found.content().getAsJsonArray("matches").get(0).getAsString());
+        assertEquals(
+                "substring(", found.content().getAsJsonArray("matches").get(0).getAsString());
         assertEquals(points - 4, found.content().get("cursor_start").getAsInt());
         assertEquals(points, found.content().get("cursor_end").getAsInt());
     }
 
     @Test
     void inspects_a_name_and_says_when_nothing_is_known() {
-        Exchange found = client.exchange(
-                "inspect_request", Map.of("code", "Rows.titled", "cursor_pos", 11, "detail_level", 0));
+        Exchange found =
+                client.exchange("inspect_request", Map.of("code", "Rows.titled", "cursor_pos", 11, "detail_level", 0));
         assertEquals("ok", found.status());
         assertTrue(found.content().get("found").getAsBoolean());
         String text = found.content().getAsJsonObject("data").get("text/plain").getAsString();
@@ -199,8 +205,9 @@ class JupyterKernelTest {
     @Test
     void tells_whether_a_cell_is_complete() {
         Map<String, String> expected = Map.of("1 + 2", "complete", "if (true) {", "incomplete", "}", "invalid");
-        expected.forEach((code, status) ->
-                assertEquals(status, client.exchange("is_complete_request", Map.of("code", code)).status()));
+        expected.forEach((code, status) -> assertEquals(
+                status,
+                client.exchange("is_complete_request", Map.of("code", code)).status()));
     }
 
     @Test
@@ -223,8 +230,8 @@ class JupyterKernelTest {
 
     @Test
     void asks_for_input_and_takes_the_answer() {
-        String id = client.send("execute_request", Map.of("code",
-                "new Scanner(System.in, \"UTF-8\").nextLine()", "allow_stdin", true));
+        String id = client.send(
+                "execute_request", Map.of("code", "new Scanner(System.in, \"UTF-8\").nextLine()", "allow_stdin", true));
         JsonObject question = client.question();
         assertEquals("input_request", WireClient.type(question));
         client.answer(question, "190 °C");
@@ -276,7 +283,9 @@ class JupyterKernelTest {
 
     @Test
     void lives_on_after_a_request_whose_content_makes_no_sense() {
-        assertEquals("error", client.exchange("complete_request", Map.of("cursor_pos", "x")).status());
+        assertEquals(
+                "error",
+                client.exchange("complete_request", Map.of("cursor_pos", "x")).status());
         assertEquals("error", client.exchange("is_complete_request", Map.of()).status());
         assertEquals("42", client.execute("42").resultText());
     }
@@ -305,11 +314,13 @@ class JupyterKernelTest {
 
     @Test
     void says_no_to_an_exit_by_reflection_and_ends_itself_all_the_same() throws Exception {
-        try (WireClient other = WireClient.start(folder, program("-jar", jarOfThisClassPath().toString()), Map.of())) {
+        try (WireClient other =
+                WireClient.start(folder, program("-jar", jarOfThisClassPath().toString()), Map.of())) {
             for (String name : List.of("exit", "halt")) {
                 Exchange ran = other.execute("var way = Runtime.class.getMethod(\"" + name + "\", int.class);\n"
                         + "way.invoke(Runtime.getRuntime(), 3);");
-                assertEquals("InvocationTargetException", ran.content().get("ename").getAsString());
+                assertEquals(
+                        "InvocationTargetException", ran.content().get("ename").getAsString());
                 String said = ran.content().getAsJsonArray("traceback").toString();
                 assertTrue(said.contains("SecurityException: " + ExitRefused.MESSAGE), said);
             }

@@ -52,15 +52,8 @@ final class WireClient implements AutoCloseable {
     static WireClient start(Path folder, List<String> command, Map<String, String> environment) throws IOException {
         List<Integer> ports = freePorts(5);
         String key = UUID.randomUUID().toString();
-        Path file = folder.resolve("connection-" + key + ".json");
-        Files.writeString(
-                file,
-                GSON.toJson(Map.of(
-                        "ip", "127.0.0.1", "transport", "tcp", "key", key, "signature_scheme", "hmac-sha256",
-                        "iopub_port", ports.get(0), "shell_port", ports.get(1), "control_port", ports.get(2),
-                        "stdin_port", ports.get(3), "hb_port", ports.get(4))));
         List<String> whole = new ArrayList<>(command);
-        whole.add(file.toString());
+        whole.add(connectionFile(folder, key, ports).toString());
         ProcessBuilder builder = new ProcessBuilder(whole)
                 .redirectErrorStream(true)
                 .redirectOutput(folder.resolve("kernel-" + key + ".log").toFile());
@@ -69,6 +62,19 @@ final class WireClient implements AutoCloseable {
         WireClient client = new WireClient(process, key, ports);
         client.untilListening();
         return client;
+    }
+
+    private static Path connectionFile(Path folder, String key, List<Integer> ports) throws IOException {
+        JsonObject connection = new JsonObject();
+        connection.addProperty("ip", "127.0.0.1");
+        connection.addProperty("transport", "tcp");
+        connection.addProperty("key", key);
+        connection.addProperty("signature_scheme", "hmac-sha256");
+        List<String> channels = List.of("iopub_port", "shell_port", "control_port", "stdin_port", "hb_port");
+        for (int i = 0; i < channels.size(); i++) {
+            connection.addProperty(channels.get(i), ports.get(i));
+        }
+        return Files.writeString(folder.resolve("connection-" + key + ".json"), GSON.toJson(connection));
     }
 
     /** A subscription takes a moment: ask until an answer is also heard on iopub, as the protocol's servers do. */
@@ -124,8 +130,21 @@ final class WireClient implements AutoCloseable {
     }
 
     Exchange execute(String code) {
-        return exchange("execute_request", Map.of("code", code, "silent", false, "store_history", true,
-                "user_expressions", Map.of(), "allow_stdin", false, "stop_on_error", true));
+        return exchange(
+                "execute_request",
+                Map.of(
+                        "code",
+                        code,
+                        "silent",
+                        false,
+                        "store_history",
+                        true,
+                        "user_expressions",
+                        Map.of(),
+                        "allow_stdin",
+                        false,
+                        "stop_on_error",
+                        true));
     }
 
     String send(String type, Map<String, ?> content) {
@@ -175,8 +194,19 @@ final class WireClient implements AutoCloseable {
 
     private String send(ZMQ.Socket socket, String type, JsonObject parent, Map<String, ?> content, String with) {
         String id = UUID.randomUUID().toString();
-        String header = GSON.toJson(Map.of("msg_id", id, "session", "test", "username", "test",
-                "date", "2026-01-01T00:00:00Z", "msg_type", type, "version", "5.3"));
+        String header = GSON.toJson(Map.of(
+                "msg_id",
+                id,
+                "session",
+                "test",
+                "username",
+                "test",
+                "date",
+                "2026-01-01T00:00:00Z",
+                "msg_type",
+                type,
+                "version",
+                "5.3"));
         List<String> parts = List.of(header, GSON.toJson(parent), "{}", GSON.toJson(content));
         socket.sendMore("<IDS|MSG>");
         socket.sendMore(signature(parts, with));
@@ -206,7 +236,10 @@ final class WireClient implements AutoCloseable {
 
     static boolean isState(JsonObject message, String state) {
         return type(message).equals("status")
-                && message.getAsJsonObject("content").get("execution_state").getAsString().equals(state);
+                && message.getAsJsonObject("content")
+                        .get("execution_state")
+                        .getAsString()
+                        .equals(state);
     }
 
     static String type(JsonObject message) {
@@ -299,7 +332,10 @@ final class WireClient implements AutoCloseable {
         }
 
         List<JsonObject> all(String type) {
-            return broadcasts.stream().filter(m -> type(m).equals(type)).map(m -> m.getAsJsonObject("content")).toList();
+            return broadcasts.stream()
+                    .filter(m -> type(m).equals(type))
+                    .map(m -> m.getAsJsonObject("content"))
+                    .toList();
         }
 
         String printed(String stream) {
@@ -311,7 +347,11 @@ final class WireClient implements AutoCloseable {
         }
 
         String resultText() {
-            return all("execute_result").get(0).getAsJsonObject("data").get("text/plain").getAsString();
+            return all("execute_result")
+                    .get(0)
+                    .getAsJsonObject("data")
+                    .get("text/plain")
+                    .getAsString();
         }
     }
 }
