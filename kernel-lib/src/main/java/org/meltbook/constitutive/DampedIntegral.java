@@ -51,17 +51,12 @@ public record DampedIntegral(RelaxationSpectrum spectrum, double damping) implem
             double slowed = 1 + damping * mode.time() * rate;
             double strain = mode.time() * rate / slowed;
             double reduced = since * slowed / mode.time();
-            double old = old(mode, rate, since, reduced);
-            shear += mode.modulus() * strain / slowed * grown(2, reduced) + old;
-            normal += 2 * mode.modulus() * strain * strain / slowed * grown(3, reduced) + old * rate * Math.min(since, 1e300);
+            double untouched = Math.exp(-reduced); // share of the memory from before the start
+            double total = untouched == 0 ? 0 : rate * since;
+            shear += mode.modulus() * (strain / slowed * grown(2, reduced) + total * untouched);
+            normal += mode.modulus() * (2 * strain * strain / slowed * grown(3, reduced) + total * total * untouched);
         }
         return Stress.shear(normal, 0, 0, shear);
-    }
-
-    /** What the memory from before the start adds to the shear stress: g γ exp(−x). */
-    private static double old(RelaxationSpectrum.Mode mode, double rate, double since, double reduced) {
-        double left = Math.exp(-reduced);
-        return left == 0 ? 0 : mode.modulus() * rate * since * left;
     }
 
     /** 1 − e^−x (1 + x + … + x^(k−1)/(k−1)!), accurate for small x too. */

@@ -1,6 +1,7 @@
 package org.meltbook.constitutive;
 
 import java.util.List;
+import java.util.stream.IntStream;
 import org.apache.commons.math3.linear.EigenDecomposition;
 import org.apache.commons.math3.linear.LUDecomposition;
 import org.apache.commons.math3.linear.MatrixUtils;
@@ -56,10 +57,8 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
     /** One mode: the steady state before the first change, then exactly from change to change. */
     private static Stress stress(RelaxationSpectrum.Mode mode, Flow flow, double time) {
         Doubles changes = flow.changes();
-        double first = changes.isEmpty() ? time : Math.min(time, changes.at(0));
-        boolean changed = !changes.isEmpty() && time >= changes.at(0);
-        VelocityGradient before = flow.gradient(changed ? Math.nextDown(first) : first);
-        double[] state = new Equation(mode.time(), before, flow.components()).steady();
+        double early = changes.isEmpty() ? time : Math.min(time, Math.nextDown(changes.at(0)));
+        double[] state = new Equation(mode.time(), flow.gradient(early), flow.components()).steady();
         for (int i = 0; i < changes.size() && changes.at(i) < time; i++) {
             double until = i + 1 < changes.size() ? Math.min(time, changes.at(i + 1)) : time;
             Equation equation = new Equation(mode.time(), flow.gradient(changes.at(i)), flow.components());
@@ -130,8 +129,10 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
         }
 
         double[] steady() {
-            if (gradient.equals(VelocityGradient.REST)) {
-                return new double[components.size()];
+            double[] rest = new double[components.size()];
+            int[] reached = reached(rest);
+            if (reached.length == 0) {
+                return rest;
             }
             double growth = growth();
             if (!(2 * time * growth < 1)) {
@@ -139,10 +140,37 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
                         + " 1/s, and the mode with λ = " + NumberText.of(time) + " s grows without bound from "
                         + NumberText.of(1 / (2 * time)) + " 1/s on");
             }
-            return new LUDecomposition(matrix)
+            double[] solved = new LUDecomposition(matrix.getSubMatrix(reached, reached))
                     .getSolver()
-                    .solve(MatrixUtils.createRealVector(drive).mapMultiply(-1))
+                    .solve(MatrixUtils.createRealVector(picked(drive, reached)).mapMultiply(-1))
                     .toArray();
+            return spread(solved, reached);
+        }
+
+        /** The components that are driven, or not zero at the start, or fed by these: the others stay zero exactly. */
+        private int[] reached(double[] start) {
+            boolean[] reached = new boolean[start.length];
+            for (int pass = 0; pass <= start.length; pass++) {
+                for (int row = 0; row < start.length; row++) {
+                    reached[row] |= drive[row] != 0 || start[row] != 0;
+                    for (int column = 0; column < start.length; column++) {
+                        reached[row] |= reached[column] && matrix.getEntry(row, column) != 0;
+                    }
+                }
+            }
+            return IntStream.range(0, start.length).filter(k -> reached[k]).toArray();
+        }
+
+        private static double[] picked(double[] all, int[] places) {
+            return IntStream.of(places).mapToDouble(k -> all[k]).toArray();
+        }
+
+        private double[] spread(double[] some, int[] places) {
+            double[] all = new double[components.size()];
+            for (int k = 0; k < places.length; k++) {
+                all[places[k]] = some[k];
+            }
+            return all;
         }
 
         /** The largest rate at which the flow stretches a line for ever: the largest real part of L's eigenvalues. */
@@ -162,7 +190,15 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
         }
 
         double[] after(double[] start, double duration) {
-            return MatrixExponential.propagate(matrix, drive, start, duration / time).toArray();
+            int[] reached = reached(start);
+            if (reached.length == 0) {
+                return start;
+            }
+            double[] after = MatrixExponential.propagate(
+                            matrix.getSubMatrix(reached, reached), picked(drive, reached), picked(start, reached),
+                            duration / time)
+                    .toArray();
+            return spread(after, reached);
         }
     }
 }

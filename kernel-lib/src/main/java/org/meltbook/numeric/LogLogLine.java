@@ -27,16 +27,21 @@ public record LogLogLine(double slope, double mean, int points) {
         return new LogLogLine(line.getSlope(), Math.exp(sum / x.size()), x.size());
     }
 
-    /** The line through the points within half a decade of the lowest x, three points at least where there are three. */
+    /** The line through the {@link #lowEndOf low end} of the points. */
     public static LogLogLine lowEnd(Doubles x, Doubles y) {
-        int[] rising = IntStream.range(0, x.size())
-                .boxed()
-                .sorted(Comparator.comparingDouble(x::at))
-                .mapToInt(Integer::intValue)
-                .toArray();
+        int[] low = lowEndOf(x);
+        return through(x.pick(low), y.pick(low));
+    }
+
+    /** Places of the points within half a decade of the lowest x, rising, three at least where there are three. */
+    public static int[] lowEndOf(Doubles x) {
         double limit = x.smallest() * HALF_DECADE;
         int within = (int) x.stream().filter(v -> v <= limit).count();
-        int[] low = java.util.Arrays.copyOf(rising, Math.min(x.size(), Math.max(FEWEST, within)));
-        return through(x.pick(low), y.pick(low));
+        return IntStream.range(0, x.size())
+                .boxed()
+                .sorted(Comparator.comparingDouble(x::at))
+                .limit(Math.max(FEWEST, within))
+                .mapToInt(Integer::intValue)
+                .toArray();
     }
 }

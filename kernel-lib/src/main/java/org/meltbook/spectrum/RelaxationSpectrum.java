@@ -200,17 +200,16 @@ public final class RelaxationSpectrum implements Exhibit {
                         meanRelaxationTime(), instantaneousModulus())
                 .text("unit", List.of("Pa·s", "1/Pa", "Pa·s²", "s", "Pa"))
                 .build();
-        return List.of(modeRows(), sums);
+        return List.of(modeRows().build(), sums);
     }
 
-    Rows modeRows() {
+    Rows.Builder modeRows() {
         double all = zeroShearViscosity();
         return Rows.titled("Modes")
                 .numbers("λ", "s", times())
                 .numbers("g", "Pa", moduli())
                 .numbers("g λ", "Pa·s", Doubles.of(modes.stream().mapToDouble(Mode::viscosity).toArray()))
-                .numbers("share of η₀", "%", Doubles.of(modes.stream().mapToDouble(m -> 100 * m.viscosity() / all).toArray()))
-                .build();
+                .numbers("share of η₀", "%", Doubles.of(modes.stream().mapToDouble(m -> 100 * m.viscosity() / all).toArray()));
     }
 
     @Override

@@ -22,8 +22,9 @@ import org.meltbook.units.Require;
 /**
  * A discrete relaxation spectrum found from a frequency sweep, and what the sweep allows to say from it.
  *
- * <p>Relaxation times stand on a logarithmic grid from 1/ω_max to 1/ω_min of the usable points, two a decade unless said
- * otherwise; the moduli come by non-negative least squares of the relative misfit, storage and loss each at its own
+ * <p>Relaxation times stand on a logarithmic grid, two a decade unless said otherwise, from 1/(10 ω_max) to 1/ω_min of the
+ * usable points. The decade beyond the window stands for all faster motion, which G″ feels as a viscosity: only g λ of these
+ * modes means anything. On the slow side the grid ends with the window. The moduli come by non-negative least squares of the relative misfit, storage and loss each at its own
  * frequencies. Modes that the data do not need are zero and left out.
  *
  * <p>Zero-shear viscosity and recoverable compliance are plain numbers only if the terminal zone was reached (see the
@@ -42,6 +43,9 @@ public final class SpectrumFit implements Exhibit {
 
     /** Up to this share the two moduli may disagree about the zero-shear viscosity before a caution says so. */
     private static final double AGREEMENT = 0.05;
+
+    /** By this factor the grid goes beyond the window on the fast side. */
+    private static final double FAST_SIDE = 10;
 
     private static final int REPLICATES = 200;
     private static final long SEED = 20260101;
@@ -106,8 +110,8 @@ public final class SpectrumFit implements Exhibit {
         if (!(highest > lowest)) {
             throw new RangeException("a spectrum needs more than one frequency, found only " + NumberText.of(lowest) + " rad/s");
         }
-        int count = 1 + (int) Math.ceil(modesPerDecade * Math.log10(highest / lowest));
-        return Doubles.logSpaced(1 / highest, 1 / lowest, Math.max(2, count));
+        int count = 1 + (int) Math.ceil(modesPerDecade * Math.log10(FAST_SIDE * highest / lowest));
+        return Doubles.logSpaced(1 / (FAST_SIDE * highest), 1 / lowest, count);
     }
 
     private static double low(Curve curve) {
@@ -245,7 +249,7 @@ public final class SpectrumFit implements Exhibit {
     public String headline() {
         return "Relaxation spectrum" + of(sweep.conditions().sample()) + ": " + spectrum().modes().size()
                 + " modes out of a grid of " + gridSize + " (" + NumberText.of(modesPerDecade, 2) + " a decade, "
-                + NumberText.of(1 / Math.max(high(storage), high(loss)), 3) + " to "
+                + NumberText.of(1 / (FAST_SIDE * Math.max(high(storage), high(loss))), 3) + " to "
                 + NumberText.of(1 / Math.min(low(storage), low(loss)), 3) + " s); moduli met within "
                 + NumberText.of(100 * rootMeanSquare(), 2) + " % (root mean square); terminal zone "
                 + (terminal.reached() ? "reached." : "NOT reached.");
@@ -260,9 +264,17 @@ public final class SpectrumFit implements Exhibit {
         List<Prediction> numbers = new ArrayList<>(List.of(zeroShearViscosity, recoverableCompliance));
         crossovers.forEach(c -> numbers.addAll(List.of(c.frequency(), c.modulus())));
         return List.of(
-                PredictionRows.of("What the sweep says", numbers), spectrum().modeRows(),
+                PredictionRows.of("What the sweep says", numbers), modeRows(),
                 residualRows("G′", storage, storageResiduals(), spectrum()::storage),
                 residualRows("G″", loss, lossResiduals(), spectrum()::loss));
+    }
+
+    private Rows modeRows() {
+        double fastest = 1 / Math.max(high(storage), high(loss));
+        return spectrum().modeRows()
+                .note("Modes faster than " + NumberText.of(fastest, 3) + " s lie beyond the window: they stand for all faster "
+                        + "motion, and only their g λ means anything.")
+                .build();
     }
 
     private static Rows residualRows(
@@ -317,7 +329,7 @@ public final class SpectrumFit implements Exhibit {
         }
         int aside = sweep.storage().setAside() + sweep.loss().setAside();
         if (aside > 0) {
-            all.add(aside + " points are marked unusable and took no part");
+            all.add(aside + (aside == 1 ? " point is" : " points are") + " marked unusable and took no part");
         }
         all.add("the modes are one way to write the moduli inside the window; they are no picture of the chains, and outside "
                 + "the window they only continue it");

@@ -2,10 +2,10 @@ package org.meltbook.viscosity;
 
 import java.util.Comparator;
 import java.util.stream.IntStream;
-import org.apache.commons.math3.stat.regression.SimpleRegression;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
+import org.meltbook.numeric.LogLogLine;
 
 /**
  * What the eye sees in a curve of viscosity over shear rate: how high it starts, how steeply it ends, where it bends.
@@ -14,8 +14,6 @@ import org.meltbook.base.RangeException;
  * @param viscosities viscosities in Pa·s
  */
 public record CurveShape(Doubles rates, Doubles viscosities) {
-    private static final double HALF_DECADE = Math.sqrt(10);
-
     /**
      * The shape of the given points, sorted by rate.
      *
@@ -43,27 +41,18 @@ public record CurveShape(Doubles rates, Doubles viscosities) {
 
     /** The points within half a decade of the lowest rate, three at least where there are three. */
     public CurveShape lowEnd() {
-        int within = (int) rates.stream().filter(r -> r <= rates.at(0) * HALF_DECADE).count();
-        return first(Math.min(rates.size(), Math.max(3, within)));
-    }
-
-    private CurveShape first(int count) {
-        int[] places = IntStream.range(0, count).toArray();
-        return new CurveShape(rates.pick(places), viscosities.pick(places));
+        int[] low = LogLogLine.lowEndOf(rates);
+        return new CurveShape(rates.pick(low), viscosities.pick(low));
     }
 
     /** Slope d ln η / d ln γ̇ of the straight line through all points in logarithms; NaN if all have one rate. */
     public double slope() {
-        SimpleRegression line = new SimpleRegression();
-        for (int i = 0; i < rates.size(); i++) {
-            line.addData(Math.log(rates.at(i)), Math.log(viscosities.at(i)));
-        }
-        return line.getSlope();
+        return LogLogLine.through(rates, viscosities).slope();
     }
 
     /** Geometric mean of the viscosities in Pa·s. */
     public double mean() {
-        return Math.exp(viscosities.stream().map(Math::log).average().orElse(Double.NaN));
+        return LogLogLine.through(rates, viscosities).mean();
     }
 
     /** Slope d ln η / d ln γ̇ at the high end, kept between −0.95 and −0.05 so that a fit can start from it. */
