@@ -1,5 +1,6 @@
 package org.meltbook.report;
 
+import java.util.ArrayList;
 import java.util.List;
 import java.util.stream.Collectors;
 import java.util.stream.IntStream;
@@ -10,8 +11,14 @@ import org.meltbook.base.Rows;
  * help in Jupyter; where a viewer strips them the table still reads well.
  */
 public final class HtmlTable {
-    /** Longer tables are shortened to this many rows, which the last line says. */
-    public static final int LONGEST = 60;
+    /** Tables of more rows are shortened to their beginning and end, which a line below says. */
+    public static final int LONGEST = 20;
+
+    private static final int FIRST = 8;
+    private static final int LAST = 4;
+
+    /** Plain text, which stands beside the HTML and is what a check compares, goes on for this many rows. */
+    public static final int LONGEST_PLAIN = 200;
 
     private static final String RULE = "border-bottom:1px solid #8886;";
     private static final String CELL = "padding:.2em .7em;";
@@ -20,12 +27,14 @@ public final class HtmlTable {
 
     /** The table as HTML; every text of it is escaped. */
     public static String of(Rows rows) {
-        int shown = Math.min(rows.size(), LONGEST);
+        boolean whole = rows.size() <= LONGEST;
         StringBuilder html = new StringBuilder("<table class=\"rows\" style=\"border-collapse:collapse\">\n");
         if (!rows.title().isBlank()) {
-            html.append("<caption style=\"text-align:left;font-weight:600;padding:.3em .7em\">")
+            // A title may be wider than its table and must not widen the columns: its outer box takes no room.
+            html.append("<caption style=\"text-align:left;font-weight:600;padding:.3em .7em\"><div style=\"width:0\">")
+                    .append("<div style=\"width:max-content;max-width:min(42rem,85vw)\">")
                     .append(Html.escape(rows.title()))
-                    .append("</caption>\n");
+                    .append("</div></div></caption>\n");
         }
         html.append("<thead><tr>");
         for (Rows.Column column : rows.columns()) {
@@ -33,26 +42,32 @@ public final class HtmlTable {
                     .append(Html.escape(column.label())).append("</th>");
         }
         html.append("</tr></thead>\n<tbody>\n");
-        IntStream.range(0, shown).forEach(row -> html.append(line(rows.columns(), row)));
+        IntStream.range(0, whole ? rows.size() : FIRST).forEach(row -> html.append(line(rows.columns(), row)));
+        if (!whole) {
+            html.append("<tr><td colspan=\"").append(rows.columns().size()).append("\" style=\"").append(CELL)
+                    .append("\">⋮</td></tr>\n");
+            IntStream.range(rows.size() - LAST, rows.size())
+                    .forEach(row -> html.append(line(rows.columns(), row)));
+        }
         html.append("</tbody>\n</table>\n");
-        notes(rows, shown).forEach(note -> html.append("<p class=\"note\" style=\"font-size:.9em;margin:.2em .7em\">")
+        notes(rows, whole ? rows.size() : FIRST + LAST).forEach(note -> html.append("<p class=\"note\" style=\"font-size:.9em;margin:.2em .7em\">")
                 .append(Html.escape(note)).append("</p>\n"));
         return html.toString();
     }
 
-    /** The table as plain text, shortened in the same way. */
+    /** The table as plain text; one of more than {@value #LONGEST_PLAIN} rows is shortened and says so. */
     public static String plain(Rows rows) {
-        if (rows.size() <= LONGEST) {
+        if (rows.size() <= LONGEST_PLAIN) {
             return rows.toString();
         }
         List<String> lines = rows.toString().lines().toList();
         int head = lines.size() - rows.size() - rows.notes().size();
-        String start = lines.stream().limit(head + LONGEST).collect(Collectors.joining("\n"));
-        return start + "\n  " + String.join("\n  ", notes(rows, LONGEST));
+        String start = lines.stream().limit(head + LONGEST_PLAIN).collect(Collectors.joining("\n"));
+        return start + "\n  " + String.join("\n  ", notes(rows, LONGEST_PLAIN));
     }
 
     private static List<String> notes(Rows rows, int shown) {
-        List<String> notes = new java.util.ArrayList<>();
+        List<String> notes = new ArrayList<>();
         if (shown < rows.size()) {
             notes.add(shown + " of " + rows.size() + " rows shown");
         }

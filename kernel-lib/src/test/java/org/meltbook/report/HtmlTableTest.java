@@ -32,16 +32,17 @@ class HtmlTableTest {
     @Test
     void a_long_table_says_how_much_of_it_is_shown() {
         Rows rows = Rows.titled("Sweep")
-                .numbers("row", "", IntStream.rangeClosed(1, 200).mapToDouble(i -> i).toArray())
+                .numbers("row", "", IntStream.rangeClosed(1, 300).mapToDouble(i -> i).toArray())
                 .note("made up")
                 .build();
         String html = HtmlTable.of(rows);
-        assertTrue(html.contains(HtmlTable.LONGEST + " of 200 rows shown"));
-        assertEquals(HtmlTable.LONGEST, html.split("<td ", -1).length - 1);
+        assertTrue(html.contains("12 of 300 rows shown"));
+        assertTrue(html.contains(">8.000</td>") && html.contains(">⋮</td>") && html.contains(">297.0</td>"), html);
+        assertEquals(13, html.split("<td ", -1).length - 1);
         List<String> plain = HtmlTable.plain(rows).lines().toList();
         assertEquals("  made up", plain.get(plain.size() - 1));
-        assertEquals("  60 of 200 rows shown", plain.get(plain.size() - 2));
-        assertEquals(2 + HtmlTable.LONGEST + 2, plain.size());
+        assertEquals("  200 of 300 rows shown", plain.get(plain.size() - 2));
+        assertEquals(2 + HtmlTable.LONGEST_PLAIN + 2, plain.size());
     }
 
     @Test
