@@ -1,7 +1,6 @@
 package org.meltbook.table;
 
 import java.util.ArrayList;
-import java.util.Collections;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.Predicate;
@@ -9,6 +8,7 @@ import java.util.stream.IntStream;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.RangeException;
 import org.meltbook.measure.Conditions;
+import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
 import org.meltbook.measure.FrequencySweep;
 import org.meltbook.measure.Heading;
@@ -53,16 +53,26 @@ final class TableReading {
         return Readings.frequencySweep(modulus(Quantity.STORAGE_MODULUS), modulus(Quantity.LOSS_MODULUS));
     }
 
-    /** What the table says of the rows of one kind; of all rows if the rows name no kind. */
-    List<Verdict> verdicts(String kind) {
-        Optional<Quantity> wanted = vocabulary.quantity(kind);
-        int[] rows = isLong() && wanted.isPresent() ? rowsOf(wanted.get()) : allRows();
-        Optional<Heading> heading = heading(h -> h.isNamed(VerdictText.HEADING));
-        if (heading.isEmpty()) {
-            return Collections.nCopies(rows.length, Verdict.SOUND);
+    /** The curve with what the table says of its rows; a row of which it says nothing keeps the verdict it has. */
+    Curve judged(Curve curve) {
+        Quantity quantity = curve.y().quantity();
+        Optional<Heading> own = heading(h -> h.isNamed(VerdictText.heading(quantity)));
+        Optional<Heading> any = own.or(() -> heading(h -> h.isNamed(VerdictText.HEADING)));
+        if (any.isEmpty()) {
+            return curve;
         }
-        Column<?> column = table.column(headings.indexOf(heading.get()));
-        return IntStream.of(rows).mapToObj(row -> VerdictText.parse(column.getString(row))).toList();
+        Column<?> cells = table.column(headings.indexOf(any.get()));
+        int[] rows = isLong() && isModulus(quantity) ? rowsOf(quantity) : allRows();
+        List<Verdict> verdicts = new ArrayList<>();
+        for (int i = 0; i < rows.length; i++) {
+            Verdict said = VerdictText.parse(cells.getString(rows[i]));
+            verdicts.add(said.equals(Verdict.SOUND) ? curve.verdicts().get(i) : said);
+        }
+        return new Curve(curve.x(), curve.y(), verdicts);
+    }
+
+    private static boolean isModulus(Quantity quantity) {
+        return quantity == Quantity.STORAGE_MODULUS || quantity == Quantity.LOSS_MODULUS;
     }
 
     private boolean isLong() {
@@ -98,7 +108,7 @@ final class TableReading {
         Column<?> kinds = table.column(headings.indexOf(heading(h -> h.isNamed("quantity")).orElseThrow()));
         for (int row = 0; row < table.rowCount(); row++) {
             Optional<Quantity> named = vocabulary.quantity(kinds.getString(row));
-            if (named.filter(q -> q == Quantity.STORAGE_MODULUS || q == Quantity.LOSS_MODULUS).isEmpty()) {
+            if (named.filter(TableReading::isModulus).isEmpty()) {
                 throw new RangeException("table '" + table.name() + "', row " + (row + 1) + ", column 'quantity': expected"
                         + " storage or loss, found '" + kinds.getString(row) + "'");
             }

@@ -7,7 +7,6 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Set;
 import java.util.stream.DoubleStream;
-import java.util.stream.IntStream;
 import java.util.stream.Stream;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
@@ -16,7 +15,6 @@ import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
 import org.meltbook.measure.FrequencySweep;
 import org.meltbook.measure.Measurement;
-import org.meltbook.measure.Verdict;
 import org.meltbook.measure.Vocabulary;
 import tech.tablesaw.api.DoubleColumn;
 import tech.tablesaw.api.StringColumn;
@@ -64,13 +62,27 @@ public final class Tables {
     public static Table of(Measurement measurement) {
         List<Rows> parts = measurement.rows();
         if (parts.size() == 1) {
-            return of(parts.get(0));
+            return withVerdicts(of(parts.get(0)), measurement.curves());
         }
         if (measurement instanceof FrequencySweep sweep) {
             return stacked(sweep);
         }
         throw new RangeException(measurement.kind() + " of '" + measurement.conditions().sample() + "' makes " + parts.size()
                 + " tables, which do not fit into one: use Tables.each");
+    }
+
+    /** One column of verdicts if all curves have the same, else one for each curve; none if there is nothing to say. */
+    private static Table withVerdicts(Table table, List<Curve> curves) {
+        if (!table.containsColumn(VerdictText.HEADING)) {
+            return table;
+        }
+        table.removeColumns(VerdictText.HEADING);
+        boolean same = curves.stream().map(Curve::verdicts).distinct().count() == 1;
+        for (Curve curve : same ? curves.subList(0, 1) : curves) {
+            String heading = same ? VerdictText.HEADING : VerdictText.heading(curve.y().quantity());
+            table.addColumns(StringColumn.create(heading, curve.verdicts().stream().map(VerdictText::of)));
+        }
+        return table;
     }
 
     /** The tables of the measurement, in SI. */
@@ -103,8 +115,8 @@ public final class Tables {
 
     /**
      * The frequency sweep in a table whose headings name quantity and unit, as in a file: {@code ω [rad/s]},
-     * {@code G' [kPa]}, {@code G'' [kPa]}, or {@code quantity}, {@code ω [rad/s]}, {@code modulus [Pa]}. A column
-     * {@code verdict}, as {@link #of(Measurement)} writes it, is honoured.
+     * {@code G' [kPa]}, {@code G'' [kPa]}, or {@code quantity}, {@code ω [rad/s]}, {@code modulus [Pa]}. Verdicts,
+     * as {@link #of(Measurement)} writes them, are honoured.
      *
      * @throws RangeException                    if a column is missing or does not hold numbers
      * @throws org.meltbook.units.UnitException if a unit is missing, unknown or of the wrong kind
@@ -117,16 +129,14 @@ public final class Tables {
     public static FrequencySweep frequencySweep(Table table, Conditions conditions, Vocabulary vocabulary) {
         TableReading reading = new TableReading(table, conditions, vocabulary);
         FrequencySweep sweep = reading.frequencySweep();
-        List<Verdict> storage = reading.verdicts("storage");
-        List<Verdict> loss = reading.verdicts("loss");
         return FrequencySweep.of(
-                conditions, judged(sweep.storage(), storage), judged(sweep.loss(), loss), sweep.trail());
+                conditions, reading.judged(sweep.storage()), reading.judged(sweep.loss()), sweep.trail());
     }
 
     /**
      * The flow curve in a table whose headings name quantity and unit, as in a file: any two of shear rate, shear stress
-     * and viscosity, with the first normal stress difference where it is there. A column {@code verdict}, as
-     * {@link #of(Measurement)} writes it, is honoured.
+     * and viscosity, with the first normal stress difference where it is there. Verdicts, as
+     * {@link #of(Measurement)} writes them, are honoured.
      *
      * @throws RangeException                    if a column is missing or does not hold numbers
      * @throws org.meltbook.units.UnitException if a unit is missing, unknown or of the wrong kind
@@ -139,20 +149,11 @@ public final class Tables {
     public static FlowCurve flowCurve(Table table, Conditions conditions, Vocabulary vocabulary) {
         TableReading reading = new TableReading(table, conditions, vocabulary);
         FlowCurve curve = reading.flowCurve();
-        List<Verdict> verdicts = reading.verdicts("");
         return FlowCurve.of(
                 conditions,
-                judged(curve.stress(), verdicts),
-                judged(curve.viscosity(), verdicts),
-                curve.firstNormalStress().map(normal -> judged(normal, verdicts)),
+                reading.judged(curve.stress()),
+                reading.judged(curve.viscosity()),
+                curve.firstNormalStress().map(reading::judged),
                 curve.trail());
-    }
-
-    /** The curve with what the table says of its rows; a row that says nothing keeps the verdict it has. */
-    private static Curve judged(Curve curve, List<Verdict> verdicts) {
-        List<Verdict> both = IntStream.range(0, curve.size())
-                .mapToObj(row -> verdicts.get(row).equals(Verdict.SOUND) ? curve.verdicts().get(row) : verdicts.get(row))
-                .toList();
-        return new Curve(curve.x(), curve.y(), both);
     }
 }

@@ -2,6 +2,7 @@ package org.meltbook.table;
 
 import java.util.Locale;
 import org.meltbook.measure.Verdict;
+import org.meltbook.units.Quantity;
 
 /** A verdict as the text of a cell, and back. */
 final class VerdictText {
@@ -17,14 +18,19 @@ final class VerdictText {
         return standing.name().toLowerCase(Locale.ROOT);
     }
 
-    /** The verdict of a cell; of two that stand in one, the worse. */
+    /** The heading above the verdicts of one curve of several. */
+    static String heading(Quantity quantity) {
+        return HEADING + " of " + quantity.symbol();
+    }
+
+    /** The verdict of a cell; text that is no verdict, such as a missing value, says nothing. */
     static Verdict parse(String text) {
-        Verdict verdict = Verdict.SOUND;
         for (Verdict.Standing standing : Verdict.Standing.values()) {
-            if (text.startsWith(word(standing) + ": ") || text.contains("; " + word(standing) + ": ")) {
-                verdict = new Verdict(standing, text.replaceFirst("^" + word(standing) + ": ", ""));
+            String start = word(standing) + ": ";
+            if (text.startsWith(start)) {
+                return new Verdict(standing, text.substring(start.length()));
             }
         }
-        return verdict;
+        return Verdict.SOUND;
     }
 }
