@@ -74,14 +74,16 @@ public final class Readings {
         for (Column other : columns.values()) {
             if (other.series().size() != values.size()) {
                 throw new RangeException(quantity.label() + " has " + values.size() + " rows, "
-                        + other.series().quantity().label() + " has " + other.series().size());
+                        + other.series().quantity().label() + " has "
+                        + other.series().size());
             }
         }
         Conversion conversion = unit.conversion(quantity);
         Map<Quantity, Column> more = new EnumMap<>(Quantity.class);
         more.putAll(columns);
         more.put(quantity, new Column(new Series(quantity, conversion.toSi(values), unit.text()), conversion, digits));
-        return new Readings(step, conditions, more, conversion.isIdentity() ? trail : noted(quantity, unit, conversion));
+        return new Readings(
+                step, conditions, more, conversion.isIdentity() ? trail : noted(quantity, unit, conversion));
     }
 
     /** The same with one more column, whose digits are those of the shortest decimal text of its numbers. */
@@ -141,9 +143,14 @@ public final class Readings {
 
     /** The frequency sweep of a storage and a loss modulus that have frequencies of their own. */
     public static FrequencySweep frequencySweep(Readings storage, Readings loss) {
-        List<Note> notes = Stream.concat(storage.trail.stream(), loss.trail.stream()).distinct().toList();
+        List<Note> notes = Stream.concat(storage.trail.stream(), loss.trail.stream())
+                .distinct()
+                .toList();
         return FrequencySweep.of(
-                storage.conditions, storage.modulus(Quantity.STORAGE_MODULUS), loss.modulus(Quantity.LOSS_MODULUS), notes);
+                storage.conditions,
+                storage.modulus(Quantity.STORAGE_MODULUS),
+                loss.modulus(Quantity.LOSS_MODULUS),
+                notes);
     }
 
     private Curve modulus(Quantity modulus) {
@@ -208,23 +215,26 @@ public final class Readings {
     }
 
     private Readings withThird(Quantity missing) {
-        Column first = column(STEADY_SHEAR.stream().filter(q -> q != missing).findFirst().orElseThrow());
+        Column first = column(
+                STEADY_SHEAR.stream().filter(q -> q != missing).findFirst().orElseThrow());
         int size = first.series().size();
         double[] third = new double[size];
         for (int row = 0; row < size; row++) {
-            double value = switch (missing) {
-                case SHEAR_RATE -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.VISCOSITY, row);
-                case SHEAR_STRESS -> at(Quantity.VISCOSITY, row) * at(Quantity.SHEAR_RATE, row);
-                default -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.SHEAR_RATE, row);
-            };
+            double value =
+                    switch (missing) {
+                        case SHEAR_RATE -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.VISCOSITY, row);
+                        case SHEAR_STRESS -> at(Quantity.VISCOSITY, row) * at(Quantity.SHEAR_RATE, row);
+                        default -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.SHEAR_RATE, row);
+                    };
             third[row] = Double.isFinite(value) ? value : Double.NaN;
         }
         Readings more = with(missing, LabUnit.parse(missing.siUnit()), Doubles.of(third), MOST_DIGITS);
-        String how = switch (missing) {
-            case SHEAR_RATE -> "shear stress / viscosity";
-            case SHEAR_STRESS -> "viscosity × shear rate";
-            default -> "shear stress / shear rate";
-        };
+        String how =
+                switch (missing) {
+                    case SHEAR_RATE -> "shear stress / viscosity";
+                    case SHEAR_STRESS -> "viscosity × shear rate";
+                    default -> "shear stress / shear rate";
+                };
         List<Note> notes = more.longer(missing.label() + " was not given: computed as " + how);
         return new Readings(step, conditions, more.columns, notes);
     }
@@ -260,7 +270,8 @@ public final class Readings {
     private Column column(Quantity quantity) {
         if (!columns.containsKey(quantity)) {
             throw new RangeException("no column of " + quantity.label() + "; there is "
-                    + String.join(", ", columns.keySet().stream().map(Quantity::label).toList()));
+                    + String.join(
+                            ", ", columns.keySet().stream().map(Quantity::label).toList()));
         }
         return columns.get(quantity);
     }

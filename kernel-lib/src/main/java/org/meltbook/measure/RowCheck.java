@@ -15,7 +15,9 @@ final class RowCheck {
         if (value > 0 && value < Double.POSITIVE_INFINITY) {
             return Verdict.SOUND;
         }
-        String why = Double.isNaN(value) ? " is not a number" : value == 0 ? " is zero" : value < 0 ? " is negative" : " is infinite";
+        String why = Double.isNaN(value)
+                ? " is not a number"
+                : value == 0 ? " is zero" : value < 0 ? " is negative" : " is infinite";
         String number = Double.isNaN(value) || value == 0 ? "" : " " + NumberText.of(value) + " " + quantity.siUnit();
         return Verdict.unusable(quantity.label() + number + why);
     }
@@ -40,7 +42,8 @@ final class RowCheck {
     /** What to say of a row whose stress is off by this, where the digits allow that; both relative. */
     static Verdict offProduct(double off, double allowed) {
         return Verdict.doubtful("shear stress is " + NumberText.of(100 * off, 2)
-                + " % off viscosity × shear rate, where the digits given allow " + NumberText.of(100 * allowed, 2) + " %");
+                + " % off viscosity × shear rate, where the digits given allow " + NumberText.of(100 * allowed, 2)
+                + " %");
     }
 
     /** The number with two significant digits, so that rows which say the same share one verdict. */

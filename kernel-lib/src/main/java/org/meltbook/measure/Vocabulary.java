@@ -58,7 +58,9 @@ public final class Vocabulary {
         for (Quantity quantity : Quantity.values()) {
             boolean shared = Arrays.stream(Quantity.values())
                     .anyMatch(other -> other != quantity && key(other.symbol()).equals(key(quantity.symbol())));
-            names = shared ? names.and(quantity, quantity.label()) : names.and(quantity, quantity.label(), quantity.symbol());
+            names = shared
+                    ? names.and(quantity, quantity.label())
+                    : names.and(quantity, quantity.label(), quantity.symbol());
         }
         return names;
     }

@@ -13,9 +13,21 @@ class NumberTextTest {
     /** Expected texts by rule: four significant digits, powers of ten outside 0.001 to 999999. */
     @ParameterizedTest
     @CsvSource({
-        "51063.7, 51060", "0.01395, 0.01395", "0.0000164, 1.640×10⁻⁵", "1e6, 1.000×10⁶", "999999, 1.000×10⁶",
-        "-12.5, −12.50", "0, 0", "NaN, –", "Infinity, ∞", "-Infinity, −∞", "0.001, 0.001000", "0.00099999, 0.001000",
-        "1, 1.000", "9999.6, 10000", "-1.5e-300, −1.500×10⁻³⁰⁰"
+        "51063.7, 51060",
+        "0.01395, 0.01395",
+        "0.0000164, 1.640×10⁻⁵",
+        "1e6, 1.000×10⁶",
+        "999999, 1.000×10⁶",
+        "-12.5, −12.50",
+        "0, 0",
+        "NaN, –",
+        "Infinity, ∞",
+        "-Infinity, −∞",
+        "0.001, 0.001000",
+        "0.00099999, 0.001000",
+        "1, 1.000",
+        "9999.6, 10000",
+        "-1.5e-300, −1.500×10⁻³⁰⁰"
     })
     void shows_four_significant_digits(double value, String text) {
         assertEquals(text, NumberText.of(value));

@@ -17,7 +17,8 @@ class RowsTest {
                 .note("two steps")
                 .build();
         assertEquals(
-                String.join("\n",
+                String.join(
+                        "\n",
                         "Steps",
                         "  step     γ̇ [1/s]",
                         "  a          1.000",
@@ -31,7 +32,8 @@ class RowsTest {
     @Test
     void columns_of_other_lengths_are_refused() {
         Rows.Builder builder = Rows.titled("x").numbers("a", "s", 1, 2);
-        String message = assertThrows(RangeException.class, () -> builder.numbers("b", "s", 1)).getMessage();
+        String message = assertThrows(RangeException.class, () -> builder.numbers("b", "s", 1))
+                .getMessage();
         assertEquals("column 'b' of 'x' has 1 rows, the columns before it have 2", message);
     }
 
@@ -39,7 +41,8 @@ class RowsTest {
     void a_missing_column_is_named_with_those_that_are_there() {
         Rows rows = Rows.titled("x").numbers("a", "s", 1).build();
         assertEquals("1.000", rows.column("a").text(0));
-        String message = assertThrows(RangeException.class, () -> rows.column("b")).getMessage();
+        String message =
+                assertThrows(RangeException.class, () -> rows.column("b")).getMessage();
         assertTrue(message.contains("no column 'b' in 'x', which has [a]"), message);
     }
 

@@ -76,10 +76,13 @@ class IntakeTest {
 
     @Test
     void headings_with_decimal_commas_and_thousands_of_pascal_become_SI() {
-        FrequencySweep sweep =
-                read("ω [rad/s];G' [kPa];G'' [kPa]", "0,1;12,5;0,031", "1;1,5E+01;2").frequencySweep();
-        assertEquals(List.of(0.1, 1.0), sweep.storage().x().values().stream().boxed().toList());
-        assertEquals(List.of(12500.0, 15000.0), sweep.storage().y().values().stream().boxed().toList());
+        FrequencySweep sweep = read("ω [rad/s];G' [kPa];G'' [kPa]", "0,1;12,5;0,031", "1;1,5E+01;2")
+                .frequencySweep();
+        assertEquals(
+                List.of(0.1, 1.0), sweep.storage().x().values().stream().boxed().toList());
+        assertEquals(
+                List.of(12500.0, 15000.0),
+                sweep.storage().y().values().stream().boxed().toList());
         assertEquals(31, sweep.loss().y().at(0), 1e-14);
         assertEquals("kPa", sweep.loss().y().originalUnit());
         assertTrue(sweep.sharesFrequencies());
@@ -116,7 +119,8 @@ class IntakeTest {
 
     @Test
     void a_normal_stress_difference_comes_along_and_a_negative_one_is_doubtful() {
-        FlowCurve curve = read("shear rate [1/s],shear stress [Pa],N1 [kPa]", "1,60,0.2", "2,100,-0.1").flowCurve();
+        FlowCurve curve = read("shear rate [1/s],shear stress [Pa],N1 [kPa]", "1,60,0.2", "2,100,-0.1")
+                .flowCurve();
         assertEquals(200, curve.firstNormalStress().orElseThrow().y().at(0), 0);
         assertEquals(
                 Verdict.doubtful("first normal stress difference −100.0 Pa is negative"),
@@ -129,7 +133,10 @@ class IntakeTest {
     void a_stress_that_is_not_viscosity_times_rate_is_doubtful_and_stays_as_it_is() {
         FlowCurve curve = read(
                         "shear rate [1/s],shear stress [Pa],viscosity [Pa·s]",
-                        "2.00,60.0,30.0", "2.00,66.0,30.0", "3.33,99.7,30.0", "2.00,60.1,30.0")
+                        "2.00,60.0,30.0",
+                        "2.00,66.0,30.0",
+                        "3.33,99.7,30.0",
+                        "2.00,60.1,30.0")
                 .flowCurve();
         assertEquals(
                 "shear stress is 9.1 % off viscosity × shear rate, where the digits given allow 0.49 %",
@@ -145,11 +152,22 @@ class IntakeTest {
     @Test
     void a_column_of_samples_splits_the_file_in_the_order_of_the_file() {
         Intake intake = read(
-                "# temperature: 190 °C", "sample,shear rate [1/s],viscosity [Pa·s]",
-                "B,1,10", "A,1,20", "B,2,9", "A,2,19");
-        assertEquals(List.of("B", "A"), intake.flowCurves().stream().map(c -> c.conditions().sample()).toList());
-        assertEquals(List.of(10.0, 9.0), intake.flowCurves().get(0).viscosity().y().values().stream().boxed().toList());
-        assertEquals(463.15, intake.flowCurves().get(1).conditions().temperature().orElseThrow(), 1e-12);
+                "# temperature: 190 °C",
+                "sample,shear rate [1/s],viscosity [Pa·s]",
+                "B,1,10",
+                "A,1,20",
+                "B,2,9",
+                "A,2,19");
+        assertEquals(
+                List.of("B", "A"),
+                intake.flowCurves().stream().map(c -> c.conditions().sample()).toList());
+        assertEquals(
+                List.of(10.0, 9.0),
+                intake.flowCurves().get(0).viscosity().y().values().stream()
+                        .boxed()
+                        .toList());
+        assertEquals(
+                463.15, intake.flowCurves().get(1).conditions().temperature().orElseThrow(), 1e-12);
     }
 
     @Test
@@ -159,7 +177,9 @@ class IntakeTest {
         assertEquals(3, whole.flowCurve().stress().size());
         assertEquals(List.of("column 'gap' is passed over: heading not known"), whole.cautions());
         Intake split = whole.splitBy("gap");
-        assertEquals(List.of("0.5", "1.0"), split.flowCurves().stream().map(c -> c.conditions().sample()).toList());
+        assertEquals(
+                List.of("0.5", "1.0"),
+                split.flowCurves().stream().map(c -> c.conditions().sample()).toList());
         IntakeException missing = assertThrows(IntakeException.class, () -> whole.splitBy("lid"));
         assertTrue(missing.getMessage().contains("expected a column named 'lid', found the headings 'gap'"));
         Files.writeString(file, "gap,shear rate [1/s],viscosity [Pa·s]\n0.5,1,11\n");
@@ -171,12 +191,17 @@ class IntakeTest {
     void moduli_of_several_samples_with_frequencies_of_their_own_stay_apart() {
         Intake intake = read(
                 "sample,quantity,ω [rad/s],modulus [kPa]",
-                "A,storage,1,2", "A,loss,3,4", "B,storage,5,6", "B,G'',7,8", "B,loss modulus,9,10");
+                "A,storage,1,2",
+                "A,loss,3,4",
+                "B,storage,5,6",
+                "B,G'',7,8",
+                "B,loss modulus,9,10");
         assertEquals(2, intake.frequencySweeps().size());
         FrequencySweep second = intake.frequencySweeps().get(1);
         assertEquals("B", second.conditions().sample());
         assertEquals(6000, second.storage().y().at(0), 0);
-        assertEquals(List.of(7.0, 9.0), second.loss().x().values().stream().boxed().toList());
+        assertEquals(
+                List.of(7.0, 9.0), second.loss().x().values().stream().boxed().toList());
     }
 
     @Test
@@ -192,7 +217,9 @@ class IntakeTest {
     void a_temperature_remark_that_cannot_be_used_is_a_caution() {
         Intake intake = read("# temperature: 180", "shear rate [1/s],viscosity [Pa·s]", "1,10");
         assertTrue(intake.flowCurve().conditions().temperature().isEmpty());
-        assertTrue(intake.cautions().get(0).startsWith("temperature '180' is not used"), intake.cautions().get(0));
+        assertTrue(
+                intake.cautions().get(0).startsWith("temperature '180' is not used"),
+                intake.cautions().get(0));
         assertEquals("180", intake.flowCurve().conditions().remarks().get("temperature"));
     }
 
@@ -222,8 +249,8 @@ class IntakeTest {
     void the_log_tells_what_was_found_out() throws Exception {
         Path file = file("ω [Hz];G' [kPa];G'' [kPa];operator", "1;0,5;2;7");
         Intake intake = Exports.read(file);
-        String digest = HexFormat.of().formatHex(
-                MessageDigest.getInstance("SHA-256").digest(Files.readAllBytes(file)));
+        String digest =
+                HexFormat.of().formatHex(MessageDigest.getInstance("SHA-256").digest(Files.readAllBytes(file)));
         assertEquals(digest, intake.digest());
         assertEquals(digest, intake.frequencySweep().conditions().digest());
         String decisions = intake.rows().get(0).toString();
@@ -249,13 +276,16 @@ class IntakeTest {
         Path file = ExportFile.of(folder, StandardCharsets.ISO_8859_1, "shear rate [1/s];viscosity [Pa·s]\n1;2\n");
         Intake intake = Exports.read(file);
         assertEquals(2, intake.flowCurve().viscosity().y().at(0), 0);
-        assertTrue(intake.cautions().get(0).startsWith("not UTF-8 text"), intake.cautions().get(0));
+        assertTrue(
+                intake.cautions().get(0).startsWith("not UTF-8 text"),
+                intake.cautions().get(0));
         assertNotEquals("", intake.digest());
     }
 
     @Test
     void quoted_cells_and_a_typed_double_prime_are_read() {
-        FrequencySweep sweep = read("\"ω [rad/s]\",G' [Pa],G\" [Pa]", "\"1\",\"2\",3").frequencySweep();
+        FrequencySweep sweep =
+                read("\"ω [rad/s]\",G' [Pa],G\" [Pa]", "\"1\",\"2\",3").frequencySweep();
         assertEquals(3, sweep.loss().y().at(0), 0);
     }
 
@@ -269,8 +299,7 @@ class IntakeTest {
 
     @Test
     void a_file_that_holds_both_tests_gives_both() {
-        Intake intake = read(
-                "ω [rad/s],G' [Pa],G'' [Pa],shear rate [1/s],viscosity [Pa·s]", "1,2,3,4,5");
+        Intake intake = read("ω [rad/s],G' [Pa],G'' [Pa],shear rate [1/s],viscosity [Pa·s]", "1,2,3,4,5");
         assertEquals("run.csv: 1 frequency sweep and 1 flow curve from 1 rows, none set aside.", intake.headline());
     }
 

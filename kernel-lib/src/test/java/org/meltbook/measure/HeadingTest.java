@@ -68,14 +68,18 @@ class HeadingTest {
     void a_plain_frequency_per_second_leaves_a_choice_and_is_refused() {
         Heading plain = Heading.of("frequency [1/s]", Vocabulary.standard());
         assertTrue(assertThrows(UnitException.class, plain::unit).getMessage().contains("Hz or rad/s"));
-        assertEquals("Hz", Heading.of("frequency [Hz]", Vocabulary.standard()).unit().text());
-        assertEquals("rad/s", Heading.of("f [rad/s]", Vocabulary.standard()).unit().text());
+        assertEquals(
+                "Hz", Heading.of("frequency [Hz]", Vocabulary.standard()).unit().text());
+        assertEquals(
+                "rad/s", Heading.of("f [rad/s]", Vocabulary.standard()).unit().text());
         assertEquals("1/s", Heading.of("ω [1/s]", Vocabulary.standard()).unit().text());
     }
 
     @Test
     void a_new_name_stands_before_an_older_meaning_and_leaves_the_standard_as_it_is() {
-        Vocabulary mine = Vocabulary.standard().with("Speichermodul", Quantity.STORAGE_MODULUS).with("γ", Quantity.RATIO);
+        Vocabulary mine = Vocabulary.standard()
+                .with("Speichermodul", Quantity.STORAGE_MODULUS)
+                .with("γ", Quantity.RATIO);
         assertEquals(Optional.of(Quantity.STORAGE_MODULUS), mine.quantity("speicher-modul"));
         assertEquals(Optional.of(Quantity.RATIO), mine.quantity("γ"));
         assertEquals(Optional.of(Quantity.SHEAR_STRAIN), Vocabulary.standard().quantity("γ"));

@@ -33,9 +33,9 @@ class MeasurementContractTest {
                 Arguments.of(Readings.frequencySweep(
                         readings(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS),
                         shifted(Quantity.ANGULAR_FREQUENCY, Quantity.LOSS_MODULUS))),
-                Arguments.of(readings(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS).flowCurve()),
-                Arguments.of(readings(
-                                Quantity.SHEAR_RATE, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
+                Arguments.of(
+                        readings(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS).flowCurve()),
+                Arguments.of(readings(Quantity.SHEAR_RATE, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
                         .flowCurve()));
     }
 
@@ -95,18 +95,25 @@ class MeasurementContractTest {
         Arrays.fill(curve.x().toArray(), 99);
         Arrays.fill(curve.y().toArray(), 99);
         assertEquals(before, curve.x().at(3), 0);
-        assertThrows(UnsupportedOperationException.class, () -> measurement.curves().add(curve));
-        assertThrows(UnsupportedOperationException.class, () -> measurement.trail().add(new Note("a", "b")));
+        assertThrows(
+                UnsupportedOperationException.class, () -> measurement.curves().add(curve));
+        assertThrows(
+                UnsupportedOperationException.class, () -> measurement.trail().add(new Note("a", "b")));
         assertThrows(UnsupportedOperationException.class, () -> curve.verdicts().set(0, Verdict.SOUND));
-        assertThrows(UnsupportedOperationException.class, () -> measurement.conditions().remarks().put("a", "b"));
+        assertThrows(
+                UnsupportedOperationException.class,
+                () -> measurement.conditions().remarks().put("a", "b"));
     }
 
     @ParameterizedTest
     @MethodSource("measurements")
     void draws_what_is_usable_apart_from_what_is_set_aside(Measurement measurement) {
         assertFalse(measurement.figures().isEmpty());
-        measurement.figures().forEach(figure -> assertTrue(
-                figure.layers().stream().anyMatch(layer -> layer.name().endsWith("set aside")), figure.toString()));
+        measurement
+                .figures()
+                .forEach(figure -> assertTrue(
+                        figure.layers().stream().anyMatch(layer -> layer.name().endsWith("set aside")),
+                        figure.toString()));
     }
 
     @Test
@@ -118,7 +125,9 @@ class MeasurementContractTest {
         assertEquals(curve.stress(), noted.stress());
         FrequencySweep sweep = readings(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS)
                 .frequencySweep();
-        assertEquals(List.of(new Note("test", "looked at")), sweep.noted(new Note("test", "looked at")).trail());
+        assertEquals(
+                List.of(new Note("test", "looked at")),
+                sweep.noted(new Note("test", "looked at")).trail());
         assertEquals(List.of(), sweep.trail());
     }
 
@@ -127,11 +136,13 @@ class MeasurementContractTest {
         Series rate = Series.of(Quantity.SHEAR_RATE, 1, 2);
         Curve stress = Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, 3, 4));
         assertThrows(RangeException.class, () -> FrequencySweep.of(CONDITIONS, stress, stress, List.of()));
-        assertThrows(RangeException.class,
+        assertThrows(
+                RangeException.class,
                 () -> FlowCurve.of(CONDITIONS, stress, stress, java.util.Optional.empty(), List.of()));
         assertThrows(RangeException.class, () -> Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, 3)));
         Curve elsewhere = Curve.of(Series.of(Quantity.SHEAR_RATE, 1, 3), Series.of(Quantity.VISCOSITY, 3, 4));
-        assertThrows(RangeException.class,
+        assertThrows(
+                RangeException.class,
                 () -> FlowCurve.of(CONDITIONS, stress, elsewhere, java.util.Optional.empty(), List.of()));
     }
 

@@ -17,8 +17,8 @@ class ReadingsTest {
     @Test
     void two_columns_of_one_quantity_or_of_two_lengths_are_refused() {
         Readings rate = NONE.with(Quantity.SHEAR_RATE, LabUnit.parse("1/s"), Doubles.of(1, 2));
-        assertThrows(RangeException.class,
-                () -> rate.with(Quantity.SHEAR_RATE, LabUnit.parse("1/s"), Doubles.of(1, 2)));
+        assertThrows(
+                RangeException.class, () -> rate.with(Quantity.SHEAR_RATE, LabUnit.parse("1/s"), Doubles.of(1, 2)));
         assertThrows(RangeException.class, () -> rate.with(Quantity.VISCOSITY, LabUnit.parse("P"), Doubles.of(1)));
     }
 
@@ -73,7 +73,9 @@ class ReadingsTest {
     }
 
     private static double three(double value) {
-        return new java.math.BigDecimal(value).round(new java.math.MathContext(3)).doubleValue();
+        return new java.math.BigDecimal(value)
+                .round(new java.math.MathContext(3))
+                .doubleValue();
     }
 
     @Test
