@@ -15,6 +15,7 @@ import org.meltbook.intake.Layout.Role;
 import org.meltbook.intake.Layout.Use;
 import org.meltbook.measure.Conditions;
 import org.meltbook.measure.Measurement;
+import org.meltbook.measure.MeasurementKind;
 import org.meltbook.measure.Readings;
 import org.meltbook.measure.Vocabulary;
 import org.meltbook.units.Quantity;
@@ -24,10 +25,6 @@ final class Gathering {
     /** A run whose readings of temperature stay within this many kelvin is one at their mean. Common practice. */
     private static final double STEADY_KELVIN = 1;
 
-    private static final List<Quantity> STEADY_SHEAR = List.of(
-            Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE);
-    private static final List<Quantity> OSCILLATION =
-            List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS);
 
     private final String file;
     private final String digest;
@@ -71,11 +68,10 @@ final class Gathering {
         int[] rows = body.rowsOf(group);
         Conditions conditions = conditions(group.keys(), rows);
         List<Quantity> quantities = layout.quantities();
-        if (Readings.makeFrequencySweep(quantities)) {
-            made.add(readings(conditions, OSCILLATION, rows).frequencySweep());
-        }
-        if (Readings.makeFlowCurve(quantities)) {
-            made.add(readings(conditions, STEADY_SHEAR, rows).flowCurve());
+        for (MeasurementKind kind : MeasurementKind.all()) {
+            if (kind.enough().test(quantities)) {
+                made.add(kind.made().apply(readings(conditions, kind.uses(), rows)));
+            }
         }
         rowsOut += rows.length;
     }

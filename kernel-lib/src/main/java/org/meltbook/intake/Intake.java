@@ -11,6 +11,7 @@ import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
 import org.meltbook.measure.FrequencySweep;
 import org.meltbook.measure.Measurement;
+import org.meltbook.measure.ModeTable;
 import org.meltbook.measure.Verdict;
 
 /**
@@ -65,6 +66,15 @@ public final class Intake implements Exhibit {
      */
     public FlowCurve flowCurve() {
         return only(flowCurves(), "flow curve");
+    }
+
+    /**
+     * The one table of Maxwell modes of the file.
+     *
+     * @throws RangeException if there is none, or more than one
+     */
+    public ModeTable modeTable() {
+        return only(of(ModeTable.class), "table of Maxwell modes");
     }
 
     private <M extends Measurement> M only(List<M> found, String kind) {

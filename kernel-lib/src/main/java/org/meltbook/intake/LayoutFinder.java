@@ -8,10 +8,12 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import java.util.stream.Collectors;
+import java.util.stream.Stream;
 import org.meltbook.intake.Layout.Role;
 import org.meltbook.intake.Layout.Use;
 import org.meltbook.measure.Heading;
-import org.meltbook.measure.Readings;
+import org.meltbook.measure.MeasurementKind;
 import org.meltbook.units.LabUnit;
 import org.meltbook.units.Quantity;
 import org.meltbook.units.UnitException;
@@ -25,16 +27,11 @@ final class LayoutFinder {
     private static final Set<Quantity> COMPOSITION =
             Set.of(Quantity.VOLUME_FRACTION, Quantity.MASS_FRACTION, Quantity.MOLAR_MASS);
 
-    /** Quantities that are read where they are found. */
-    private static final Set<Quantity> READ = Set.of(
-            Quantity.ANGULAR_FREQUENCY,
-            Quantity.STORAGE_MODULUS,
-            Quantity.LOSS_MODULUS,
-            Quantity.SHEAR_RATE,
-            Quantity.SHEAR_STRESS,
-            Quantity.VISCOSITY,
-            Quantity.FIRST_NORMAL_STRESS_DIFFERENCE,
-            Quantity.TEMPERATURE);
+    /** Quantities that are read where they are found: what any kind of measurement uses, and the temperature. */
+    private static final Set<Quantity> READ = Stream.concat(
+                    MeasurementKind.all().stream().flatMap(kind -> kind.uses().stream()),
+                    Stream.of(Quantity.TEMPERATURE))
+            .collect(Collectors.toUnmodifiableSet());
 
     private final String file;
     private final Options options;
@@ -186,7 +183,7 @@ final class LayoutFinder {
                 found.add(headings.get(i).quantity().orElseThrow());
             }
         }
-        if (!Readings.makeFlowCurve(found) && !Readings.makeFrequencySweep(found)) {
+        if (MeasurementKind.all().stream().noneMatch(kind -> kind.enough().test(found))) {
             String known = found.isEmpty()
                     ? "none of these"
                     : "only "
@@ -194,10 +191,16 @@ final class LayoutFinder {
                                     ", ", found.stream().map(Quantity::label).toList());
             throw refused(
                     "",
-                    Readings.needed(),
+                    needed(),
                     known + " in the headings " + texts(headings)
                             + "; Exports.reading(file).where(name, quantity) tells what another name means");
         }
+    }
+
+    private static String needed() {
+        return MeasurementKind.all().stream()
+                .map(kind -> kind.needs() + " for a " + kind.name())
+                .collect(Collectors.joining(", or "));
     }
 
     /** A unit row is there if a heading lacks its unit and the cell below it is not a number. */

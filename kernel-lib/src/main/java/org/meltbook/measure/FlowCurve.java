@@ -14,6 +14,18 @@ import org.meltbook.units.Quantity;
  * measured. A curve is made from any two of rate, stress and viscosity; the third follows from σ = η γ̇.
  */
 public final class FlowCurve implements Measurement {
+    /** How intake makes one. */
+    static final MeasurementKind KIND = new MeasurementKind(
+            "flow curve",
+            "two of shear rate, shear stress and viscosity",
+            List.of(
+                    Quantity.SHEAR_RATE,
+                    Quantity.SHEAR_STRESS,
+                    Quantity.VISCOSITY,
+                    Quantity.FIRST_NORMAL_STRESS_DIFFERENCE),
+            found -> Readings.STEADY_SHEAR.stream().filter(found::contains).count() >= 2,
+            columns -> columns.flowCurve());
+
     private final Conditions conditions;
     private final Curve stress;
     private final Curve viscosity;
@@ -69,7 +81,7 @@ public final class FlowCurve implements Measurement {
 
     @Override
     public String kind() {
-        return "flow curve";
+        return KIND.name();
     }
 
     @Override

@@ -14,6 +14,15 @@ import org.meltbook.units.Quantity;
  * of their own, as when they were read off a printed figure; nothing is interpolated to bring them together.
  */
 public final class FrequencySweep implements Measurement {
+    /** How intake makes one. */
+    static final MeasurementKind KIND = new MeasurementKind(
+            "frequency sweep",
+            "angular frequency, storage modulus and loss modulus",
+            List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS),
+            found -> found.containsAll(
+                    List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS)),
+            columns -> columns.frequencySweep());
+
     private final Conditions conditions;
     private final Curve storage;
     private final Curve loss;
@@ -48,7 +57,7 @@ public final class FrequencySweep implements Measurement {
 
     @Override
     public String kind() {
-        return "frequency sweep";
+        return KIND.name();
     }
 
     @Override

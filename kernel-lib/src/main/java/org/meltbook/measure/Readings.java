@@ -2,7 +2,6 @@ package org.meltbook.measure;
 
 import java.math.BigDecimal;
 import java.util.ArrayList;
-import java.util.Collection;
 import java.util.Collections;
 import java.util.EnumMap;
 import java.util.HashMap;
@@ -23,10 +22,8 @@ import org.meltbook.units.Quantity;
  * verdict, and each step leaves a note; no row is dropped and no number is changed otherwise.
  */
 public final class Readings {
-    private static final List<Quantity> STEADY_SHEAR =
+    static final List<Quantity> STEADY_SHEAR =
             List.of(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY);
-    private static final List<Quantity> OSCILLATION =
-            List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS);
     private static final int MOST_DIGITS = 17;
 
     private final String step;
@@ -116,22 +113,6 @@ public final class Readings {
         return columns.containsKey(quantity);
     }
 
-    /** Whether these columns make a flow curve: two of shear rate, shear stress and viscosity. */
-    public static boolean makeFlowCurve(Collection<Quantity> quantities) {
-        return STEADY_SHEAR.stream().filter(quantities::contains).count() >= 2;
-    }
-
-    /** Whether these columns make a frequency sweep: angular frequency, storage and loss modulus. */
-    public static boolean makeFrequencySweep(Collection<Quantity> quantities) {
-        return quantities.containsAll(OSCILLATION);
-    }
-
-    /** What is needed to make a measurement of columns, for messages. */
-    public static String needed() {
-        return "angular frequency, storage modulus and loss modulus for a frequency sweep, or two of shear rate, shear"
-                + " stress and viscosity for a flow curve";
-    }
-
     /**
      * The frequency sweep of these columns.
      *
@@ -154,8 +135,21 @@ public final class Readings {
     }
 
     private Curve modulus(Quantity modulus) {
-        List<Verdict> frequencies = scanned(Quantity.ANGULAR_FREQUENCY);
-        return over(Quantity.ANGULAR_FREQUENCY, frequencies, modulus, RowCheck::aboveZero);
+        return positive(Quantity.ANGULAR_FREQUENCY, modulus);
+    }
+
+    /**
+     * The table of Maxwell modes of these columns.
+     *
+     * @throws RangeException if relaxation time or relaxation modulus is missing
+     */
+    public ModeTable modeTable() {
+        return ModeTable.of(conditions, positive(Quantity.RELAXATION_TIME, Quantity.RELAXATION_MODULUS), trail);
+    }
+
+    /** One quantity over another, both of which must be above zero to be used. */
+    private Curve positive(Quantity x, Quantity y) {
+        return over(x, scanned(x), y, RowCheck::aboveZero);
     }
 
     /** What is said of each rate or frequency. */

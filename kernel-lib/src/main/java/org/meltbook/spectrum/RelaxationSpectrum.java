@@ -10,6 +10,7 @@ import org.meltbook.base.Rows;
 import org.meltbook.figure.Axis;
 import org.meltbook.figure.Exhibit;
 import org.meltbook.figure.Figure;
+import org.meltbook.measure.ModeTable;
 import org.meltbook.units.Quantity;
 import org.meltbook.units.Require;
 
@@ -81,6 +82,15 @@ public final class RelaxationSpectrum implements Exhibit {
             modes.add(new Mode(moduli.at(i), times.at(i)));
         }
         return of(modes);
+    }
+
+    /**
+     * The spectrum that somebody printed as a table of modes; unusable rows are left out.
+     *
+     * @throws RangeException if no row is usable, or two have the same relaxation time
+     */
+    public static RelaxationSpectrum of(ModeTable table) {
+        return of(table.modes().usable().y().values(), table.modes().usable().x().values());
     }
 
     /** The modes from short to long relaxation times. */
