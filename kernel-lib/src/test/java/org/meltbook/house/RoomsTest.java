@@ -79,7 +79,7 @@ class RoomsTest {
                 .resideInAPackage(BASE + room + "..")
                 .should()
                 .onlyDependOnClassesThat(
-                        resideOutsideOfPackage(BASE + "..").or(resideInAnyPackage(allowed.toArray(String[]::new))))
+                        resideOutsideOfPackage("org.meltbook..").or(resideInAnyPackage(allowed.toArray(String[]::new))))
                 .check(HOUSE);
     }
 

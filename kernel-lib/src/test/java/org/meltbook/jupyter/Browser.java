@@ -51,10 +51,7 @@ final class Browser implements AutoCloseable {
 
     /** A browser with an empty profile in {@code profile}. */
     static Browser open(Path profile) throws IOException, InterruptedException {
-        int port;
-        try (ServerSocket free = new ServerSocket(0)) {
-            port = free.getLocalPort();
-        }
+        int port = freePort();
         Process driver = new ProcessBuilder("chromedriver", "--port=" + port)
                 .redirectErrorStream(true)
                 .redirectOutput(profile.resolve("chromedriver.log").toFile())
@@ -64,6 +61,13 @@ final class Browser implements AutoCloseable {
         } catch (IOException | InterruptedException | RuntimeException failed) {
             driver.destroyForcibly();
             throw failed;
+        }
+    }
+
+    /** A port of this machine that nobody listens at. */
+    static int freePort() throws IOException {
+        try (ServerSocket free = new ServerSocket(0)) {
+            return free.getLocalPort();
         }
     }
 

@@ -9,6 +9,10 @@ import com.google.gson.JsonElement;
 import com.google.gson.JsonObject;
 import com.google.gson.JsonParser;
 import java.io.IOException;
+import java.net.URI;
+import java.net.http.HttpClient;
+import java.net.http.HttpRequest;
+import java.net.http.HttpResponse;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
@@ -84,21 +88,22 @@ class JupyterIT {
         needs("jupyter", "notebook", "--version");
         needs("chromedriver", "--version");
         Path project = copyOfTheProject();
-        Path log = home.resolve("notebook.log");
+        URI address = URI.create("http://127.0.0.1:" + Browser.freePort() + "/");
         Process server = command(List.of(
                         "jupyter",
                         "notebook",
                         "--no-browser",
                         "--allow-root",
                         "--ip=127.0.0.1",
-                        "--port=0",
+                        "--port=" + address.getPort(),
+                        "--NotebookApp.port_retries=0",
                         "--NotebookApp.token=",
                         "--NotebookApp.password=",
                         "--notebook-dir=" + project))
-                .redirectOutput(log.toFile())
+                .redirectOutput(home.resolve("notebook.log").toFile())
                 .start();
         try (Browser browser = Browser.open(Files.createDirectories(home.resolve("profile")))) {
-            String address = addressOf(server, log);
+            answering(server, address);
             browser.go(address + "notebooks/notebooks/00-first-look.ipynb");
             Waiting.until("the notebook is open and its kernel idle", Duration.ofMinutes(2), () -> browser.holds(
                     "window.Jupyter && Jupyter.notebook && Jupyter.notebook.kernel"
@@ -125,21 +130,21 @@ class JupyterIT {
         }
     }
 
-    private static String addressOf(Process server, Path log) throws InterruptedException, IOException {
-        Waiting.until("Jupyter Notebook tells its address", Duration.ofMinutes(1), () -> address(log) != null);
-        assertTrue(server.isAlive());
-        return address(log);
-    }
-
-    private static String address(Path log) {
-        try (Stream<String> lines = Files.lines(log)) {
-            return lines.filter(l -> l.contains("http://127.0.0.1:"))
-                    .map(l -> l.substring(l.indexOf("http://127.0.0.1:")).trim())
-                    .findFirst()
-                    .orElse(null);
-        } catch (IOException notYet) {
-            return null;
-        }
+    /** Waits until the server answers at its address. */
+    private static void answering(Process server, URI address) throws InterruptedException {
+        HttpClient client = HttpClient.newHttpClient();
+        HttpRequest status = HttpRequest.newBuilder(address.resolve("api")).build();
+        Waiting.until("Jupyter Notebook answers", Duration.ofMinutes(1), () -> {
+            try {
+                return client.send(status, HttpResponse.BodyHandlers.discarding()).statusCode() == 200;
+            } catch (IOException notYet) {
+                return false;
+            } catch (InterruptedException stopped) {
+                Thread.currentThread().interrupt();
+                return false;
+            }
+        });
+        assertTrue(server.isAlive(), "another server answers at " + address);
     }
 
     private static void end(Process server) throws InterruptedException {
