@@ -2,6 +2,7 @@ package org.meltbook.kernel;
 
 import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertFalse;
+import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import com.google.gson.JsonObject;
@@ -343,6 +344,15 @@ class JupyterKernelTest {
         } finally {
             parent.destroy();
         }
+    }
+
+    @Test
+    void does_not_serve_with_imports_that_cannot_be_compiled() throws IOException {
+        Path file = WireClient.connectionFile(folder, "some-key", WireClient.freePorts(5));
+        Settings wrong = Settings.plain().importing(List.of("import no.such.Thing;"));
+        IllegalArgumentException thrown =
+                assertThrows(IllegalArgumentException.class, () -> JupyterKernel.serve(file, wrong));
+        assertTrue(thrown.getMessage().contains("import no.such.Thing;"), thrown.getMessage());
     }
 
     @Test

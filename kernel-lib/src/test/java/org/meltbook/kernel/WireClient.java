@@ -64,7 +64,8 @@ final class WireClient implements AutoCloseable {
         return client;
     }
 
-    private static Path connectionFile(Path folder, String key, List<Integer> ports) throws IOException {
+    /** A connection file as Jupyter writes it, for the given ports of iopub, shell, control, stdin and heartbeat. */
+    static Path connectionFile(Path folder, String key, List<Integer> ports) throws IOException {
         JsonObject connection = new JsonObject();
         connection.addProperty("ip", "127.0.0.1");
         connection.addProperty("transport", "tcp");
@@ -302,7 +303,7 @@ final class WireClient implements AutoCloseable {
         return socket;
     }
 
-    private static List<Integer> freePorts(int count) throws IOException {
+    static List<Integer> freePorts(int count) throws IOException {
         List<ServerSocket> held = new ArrayList<>();
         for (int i = 0; i < count; i++) {
             held.add(new ServerSocket(0));
