@@ -24,10 +24,10 @@ final class Body {
     record Group(List<String> keys, Optional<Quantity> kind) {}
 
     private final String file;
-    private final Layout layout;
     private final Vocabulary vocabulary;
     private final CellNumber cell;
-    private final List<Use> numbers = new ArrayList<>();
+    private final List<Use> numbers;
+    private final Optional<Use> kind;
     private final List<Use> keys;
     private final double[][] values;
     private final int[] digits;
@@ -40,11 +40,10 @@ final class Body {
 
     Body(String file, Layout layout, Vocabulary vocabulary, DecimalSign decimal) {
         this.file = file;
-        this.layout = layout;
         this.vocabulary = vocabulary;
         this.cell = new CellNumber(decimal);
-        this.numbers.addAll(layout.with(Role.NUMBERS));
-        this.numbers.addAll(layout.with(Role.MODULI));
+        this.numbers = layout.numbers();
+        this.kind = layout.with(Role.KIND).stream().findFirst();
         this.keys = layout.with(Role.KEY);
         this.values = new double[numbers.size()][64];
         this.digits = new int[numbers.size()];
@@ -72,8 +71,10 @@ final class Body {
     }
 
     private IntakeException refused(CsvRecord row, Use use, String expected, String text) {
-        String found = text.isBlank() ? "an empty cell (write NaN where a value is missing)" : IntakeException.quoted(text);
-        return new IntakeException(file, row.getStartingLineNumber(), use.heading().text(), expected, found);
+        String found =
+                text.isBlank() ? "an empty cell (write NaN where a value is missing)" : IntakeException.quoted(text);
+        return new IntakeException(
+                file, row.getStartingLineNumber(), use.heading().text(), expected, found);
     }
 
     private void grow() {
@@ -86,8 +87,9 @@ final class Body {
 
     /** Rows of one group mostly follow each other: only a change is looked up. */
     private int group(CsvRecord row) {
-        List<String> cells = keys.isEmpty() ? List.of() : keys.stream().map(k -> row.getField(k.index()).strip()).toList();
-        Optional<Use> kind = layout.with(Role.KIND).stream().findFirst();
+        List<String> cells = keys.isEmpty()
+                ? List.of()
+                : keys.stream().map(k -> row.getField(k.index()).strip()).toList();
         if (kind.isEmpty() && lastGroup >= 0 && cells.equals(lastCells)) {
             return lastGroup;
         }

@@ -5,8 +5,8 @@ import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 
 /**
- * What all cells of a file together say about its decimal sign. {@code 12,5} proves a decimal comma; {@code 1,234} may be
- * 1.234 or 1234, and if no other cell settles it the file is refused rather than guessed at.
+ * What all cells of a file together say about its decimal sign. {@code 12,5} proves a decimal comma; {@code 1,234} may
+ * be 1.234 or 1234, and if no other cell settles it the file is refused rather than guessed at.
  */
 final class DecimalEvidence {
     private static final Pattern ONE_SIGN = Pattern.compile("[+−-]?(\\d*)[.,](\\d*)([eE].*)?");
@@ -87,7 +87,9 @@ final class DecimalEvidence {
     DecimalSign decide() {
         if (comma.isPresent() && point.isPresent()) {
             Witness later = comma.get().line() >= point.get().line() ? comma.get() : point.get();
-            throw refused(later, "one decimal sign in the whole file",
+            throw refused(
+                    later,
+                    "one decimal sign in the whole file",
                     comma.get() + " with a comma and " + point.get() + " with a point");
         }
         Optional<Witness> twoReadings = comma.isPresent() ? pointOrGroup : commaOrGroup;
@@ -101,8 +103,11 @@ final class DecimalEvidence {
         String cell = witness.cell();
         String small = cell.replace(',', '.');
         String large = cell.replaceAll("[.,]", "");
-        return refused(witness, "a decimal sign that is clear", "'" + cell + "', which may mean " + small + " or " + large
-                + ": say which with Exports.reading(file).decimalComma() or .decimalPoint()");
+        return refused(
+                witness,
+                "a decimal sign that is clear",
+                "'" + cell + "', which may mean " + small + " or " + large
+                        + ": say which with Exports.reading(file).decimalComma() or .decimalPoint()");
     }
 
     private IntakeException refused(Witness at, String expected, String found) {

@@ -4,6 +4,7 @@ import de.siegmar.fastcsv.reader.CommentStrategy;
 import de.siegmar.fastcsv.reader.CsvParseException;
 import de.siegmar.fastcsv.reader.CsvReader;
 import de.siegmar.fastcsv.reader.CsvRecord;
+import java.io.IOException;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
@@ -15,6 +16,8 @@ enum Delimiter {
     TAB('\t', "tab"),
     SEMICOLON(';', "semicolon"),
     COMMA(',', "comma");
+
+    private static final int LOOKED_AT = 200;
 
     private final char character;
     private final String word;
@@ -53,15 +56,15 @@ enum Delimiter {
     private record Trial(Delimiter delimiter, int cells, boolean even, long known) {}
 
     /**
-     * The delimiter that cuts all rows of the beginning of a file into the same number of cells, with a heading that the
-     * vocabulary knows best.
+     * The delimiter that cuts all rows of the beginning of a file into the same number of cells, with a heading that
+     * the vocabulary knows best.
      *
      * @throws IntakeException if none gives two cells a row, or two do equally well
      */
     static Delimiter find(String file, String beginning, Vocabulary vocabulary) {
         List<Trial> trials = new ArrayList<>();
         for (Delimiter delimiter : values()) {
-            List<CsvRecord> rows = delimiter.rows(beginning);
+            List<CsvRecord> rows = delimiter.rows(beginning, LOOKED_AT);
             if (!rows.isEmpty() && rows.get(0).getFieldCount() >= 2) {
                 trials.add(trial(delimiter, rows, vocabulary));
             }
@@ -71,15 +74,25 @@ enum Delimiter {
                 .thenComparing(Trial::cells)
                 .reversed());
         if (trials.isEmpty()) {
-            throw new IntakeException(file, 0, "",
+            throw new IntakeException(
+                    file,
+                    0,
+                    "",
                     "a header and rows of two or more cells, set apart by comma, semicolon or tab",
-                    IntakeException.quoted(beginning.lines().filter(line -> !line.startsWith("#") && !line.isBlank())
-                            .findFirst().orElse("comment lines only")));
+                    IntakeException.quoted(beginning
+                            .lines()
+                            .filter(line -> !line.startsWith("#") && !line.isBlank())
+                            .findFirst()
+                            .orElse("comment lines only")));
         }
         if (trials.size() > 1 && sameRank(trials.get(0), trials.get(1))) {
-            throw new IntakeException(file, 0, "", "one delimiter",
-                    "text that can be cut by " + trials.get(0).delimiter() + " as well as by " + trials.get(1).delimiter()
-                            + ": say which with Exports.reading(file).delimiter(…)");
+            throw new IntakeException(
+                    file,
+                    0,
+                    "",
+                    "one delimiter",
+                    "text that can be cut by " + trials.get(0).delimiter() + " as well as by "
+                            + trials.get(1).delimiter() + ": say which with Exports.reading(file).delimiter(…)");
         }
         return trials.get(0).delimiter();
     }
@@ -97,15 +110,19 @@ enum Delimiter {
         return new Trial(delimiter, cells, even, known);
     }
 
-    private List<CsvRecord> rows(String beginning) {
+    /** The first rows of the beginning of a file, up to {@code most}; none if its quotes do not pair. */
+    List<CsvRecord> rows(String beginning, int most) {
         List<CsvRecord> rows = new ArrayList<>();
         try (CsvReader<CsvRecord> reader = reader().ofCsvRecord(beginning)) {
             for (CsvRecord row : reader) {
+                if (rows.size() == most) {
+                    break;
+                }
                 if (!row.isComment()) {
                     rows.add(row);
                 }
             }
-        } catch (CsvParseException | java.io.IOException badlyQuoted) {
+        } catch (CsvParseException | IOException badlyQuoted) {
             return List.of();
         }
         return rows;

@@ -20,12 +20,12 @@ public final class Exports {
         return read(Path.of(path));
     }
 
-    /** A file about to be read, for those who want to decide how: {@code Exports.reading(path).decimalComma().read()}. */
+    /** A file about to be read, for those who decide how: {@code Exports.reading(path).decimalComma().read()}. */
     public static Reading reading(Path path) {
         return new Reading(path, Options.NONE);
     }
 
-    /** A file about to be read, for those who want to decide how. */
+    /** A file about to be read, for those who decide how. */
     public static Reading reading(String path) {
         return reading(Path.of(path));
     }

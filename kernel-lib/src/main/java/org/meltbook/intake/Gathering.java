@@ -25,10 +25,7 @@ final class Gathering {
     private static final double STEADY_KELVIN = 1;
 
     private static final List<Quantity> STEADY_SHEAR = List.of(
-            Quantity.SHEAR_RATE,
-            Quantity.SHEAR_STRESS,
-            Quantity.VISCOSITY,
-            Quantity.FIRST_NORMAL_STRESS_DIFFERENCE);
+            Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE);
     private static final List<Quantity> OSCILLATION =
             List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS);
 
@@ -58,7 +55,8 @@ final class Gathering {
             warnings.add("column " + IntakeException.quoted(use.heading().text()) + " is passed over: " + use.why());
         }
         Map<List<String>, List<Group>> together = new LinkedHashMap<>();
-        body.groups().forEach(group -> together.computeIfAbsent(group.keys(), k -> new ArrayList<>()).add(group));
+        body.groups().forEach(group -> together.computeIfAbsent(group.keys(), k -> new ArrayList<>())
+                .add(group));
         together.values().forEach(layout.isLong() ? this::gatherLong : this::gatherWide);
         return this;
     }
@@ -102,7 +100,8 @@ final class Gathering {
         int[] all = IntStream.concat(IntStream.of(storage), IntStream.of(loss)).toArray();
         Conditions conditions = conditions(groups.get(0).keys(), all);
         made.add(Readings.frequencySweep(
-                modulus(conditions, Quantity.STORAGE_MODULUS, storage), modulus(conditions, Quantity.LOSS_MODULUS, loss)));
+                modulus(conditions, Quantity.STORAGE_MODULUS, storage),
+                modulus(conditions, Quantity.LOSS_MODULUS, loss)));
         rowsOut += all.length;
     }
 
@@ -110,9 +109,12 @@ final class Gathering {
         Group group = groups.stream()
                 .filter(g -> g.kind().equals(Optional.of(kind)))
                 .findFirst()
-                .orElseThrow(() -> new IntakeException(file, 0,
+                .orElseThrow(() -> new IntakeException(
+                        file,
+                        0,
                         layout.with(Role.KIND).get(0).heading().text(),
-                        "rows of " + kind.label() + keysText(groups.get(0).keys()), "none"));
+                        "rows of " + kind.label() + keysText(groups.get(0).keys()),
+                        "none"));
         return body.rowsOf(group);
     }
 
@@ -145,7 +147,11 @@ final class Gathering {
     /** A name speaks for itself; a number needs what it is, and its unit. */
     private static String name(Use use, String key) {
         boolean number = use.heading().quantity().isPresent();
-        String unit = use.heading().unitText().filter(text -> !text.equals("1")).map(text -> " " + text).orElse("");
+        String unit = use.heading()
+                .unitText()
+                .filter(text -> !text.equals("1"))
+                .map(text -> " " + text)
+                .orElse("");
         return number ? use.heading().name() + " " + key + unit : key;
     }
 
@@ -164,17 +170,22 @@ final class Gathering {
         if (column.isEmpty()) {
             return temperature;
         }
-        Doubles kelvin = column.get().unit().orElseThrow()
+        Doubles kelvin = column.get()
+                .unit()
+                .orElseThrow()
                 .conversion(Quantity.TEMPERATURE)
                 .toSi(body.numbers(column.get(), rows));
         double spread = kelvin.largest() - kelvin.smallest();
         if (spread <= STEADY_KELVIN) {
-            return OptionalDouble.of(kelvin.stream().filter(Double::isFinite).average().orElseThrow());
+            return OptionalDouble.of(
+                    kelvin.stream().filter(Double::isFinite).average().orElseThrow());
         }
-        warnings.add((sample.isEmpty() ? "" : sample + ": ") + (Double.isNaN(spread)
-                ? "the temperature column holds no number"
-                : "temperature runs from " + NumberText.of(kelvin.smallest()) + " to " + NumberText.of(kelvin.largest())
-                        + " K: not used as one; splitBy its heading if these are several runs"));
+        warnings.add((sample.isEmpty() ? "" : sample + ": ")
+                + (Double.isNaN(spread)
+                        ? "the temperature column holds no number"
+                        : "temperature runs from " + NumberText.of(kelvin.smallest()) + " to "
+                                + NumberText.of(kelvin.largest())
+                                + " K: not used as one; splitBy its heading if these are several runs"));
         return OptionalDouble.empty();
     }
 }

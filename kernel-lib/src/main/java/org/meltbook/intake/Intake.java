@@ -74,7 +74,8 @@ public final class Intake implements Exhibit {
         if (found.isEmpty()) {
             throw new RangeException(log.file() + " holds no " + kind + "; it holds " + contents());
         }
-        throw new RangeException(log.file() + " holds " + found.size() + " " + kind + "s: take one of the list, by sample: "
+        throw new RangeException(log.file() + " holds " + found.size() + " " + kind
+                + "s: take one of the list, by sample: "
                 + found.stream().map(m -> "'" + m.conditions().sample() + "'").collect(Collectors.joining(", ")));
     }
 
@@ -86,7 +87,11 @@ public final class Intake implements Exhibit {
     public Intake splitBy(String... headings) {
         Intake again = reading.splitBy(headings).read();
         if (!again.digest().equals(digest())) {
-            throw new IntakeException(log.file(), 0, "", "the file as it was first read (SHA-256 " + digest() + ")",
+            throw new IntakeException(
+                    log.file(),
+                    0,
+                    "",
+                    "the file as it was first read (SHA-256 " + digest() + ")",
                     "a changed one (" + again.digest() + ")");
         }
         return again;
@@ -120,8 +125,10 @@ public final class Intake implements Exhibit {
 
     private String contents() {
         List<String> parts = new ArrayList<>();
-        for (String kind : measurements.stream().map(Measurement::kind).distinct().toList()) {
-            long count = measurements.stream().filter(m -> m.kind().equals(kind)).count();
+        for (String kind :
+                measurements.stream().map(Measurement::kind).distinct().toList()) {
+            long count =
+                    measurements.stream().filter(m -> m.kind().equals(kind)).count();
             parts.add(count + " " + kind + (count == 1 ? "" : "s"));
         }
         return String.join(" and ", parts);
@@ -136,10 +143,20 @@ public final class Intake implements Exhibit {
     private Rows made() {
         return Rows.titled("Measurements of " + log.file())
                 .text("kind", measurements.stream().map(Measurement::kind).toList())
-                .text("sample", measurements.stream().map(m -> m.conditions().sample()).toList())
+                .text(
+                        "sample",
+                        measurements.stream().map(m -> m.conditions().sample()).toList())
                 .text("points", measurements.stream().map(Intake::points).toList())
-                .text("doubtful", measurements.stream().map(m -> count(m, Verdict.Standing.DOUBTFUL)).toList())
-                .text("unusable", measurements.stream().map(m -> count(m, Verdict.Standing.UNUSABLE)).toList())
+                .text(
+                        "doubtful",
+                        measurements.stream()
+                                .map(m -> count(m, Verdict.Standing.DOUBTFUL))
+                                .toList())
+                .text(
+                        "unusable",
+                        measurements.stream()
+                                .map(m -> count(m, Verdict.Standing.UNUSABLE))
+                                .toList())
                 .build();
     }
 
@@ -152,7 +169,11 @@ public final class Intake implements Exhibit {
     private static String count(Measurement measurement, Verdict.Standing standing) {
         long most = 0;
         for (Curve curve : measurement.curves()) {
-            most = Math.max(most, curve.verdicts().stream().filter(v -> v.standing() == standing).count());
+            most = Math.max(
+                    most,
+                    curve.verdicts().stream()
+                            .filter(v -> v.standing() == standing)
+                            .count());
         }
         return Long.toString(most);
     }

@@ -59,23 +59,31 @@ record IntakeLog(
                     what.add(line[0]);
                     found.add(line[1]);
                 });
-        return Rows.titled("Intake of " + file).text("what", what).text("found", found).build();
+        return Rows.titled("Intake of " + file)
+                .text("what", what)
+                .text("found", found)
+                .build();
     }
 
     private String units() {
-        return layout.unitLine() > 0 ? "row in line " + layout.unitLine() + ", where not in the headings" : "in the headings";
+        return layout.unitLine() > 0
+                ? "row in line " + layout.unitLine() + ", where not in the headings"
+                : "in the headings";
     }
 
     private String splitBy() {
         List<Use> keys = layout.with(Role.KEY);
-        return keys.isEmpty() ? "nothing" : String.join(", ", keys.stream().map(k -> k.heading().text()).toList());
+        return keys.isEmpty()
+                ? "nothing"
+                : String.join(", ", keys.stream().map(k -> k.heading().text()).toList());
     }
 
     private String setAside() {
         if (emptyLines.isEmpty()) {
             return "0";
         }
-        List<String> shown = emptyLines.stream().limit(LINES_SHOWN).map(String::valueOf).toList();
+        List<String> shown =
+                emptyLines.stream().limit(LINES_SHOWN).map(String::valueOf).toList();
         return emptyLines.size() + ": all cells empty in line " + String.join(", ", shown)
                 + (emptyLines.size() > LINES_SHOWN ? ", …" : "");
     }
@@ -86,7 +94,11 @@ record IntakeLog(
         return Rows.titled("Columns of " + file)
                 .text("heading", uses.stream().map(use -> use.heading().text()).toList())
                 .text("read as", uses.stream().map(IntakeLog::readAs).toList())
-                .text("unit", uses.stream().map(use -> use.unit().map(LabUnit::text).orElse("–")).toList())
+                .text(
+                        "unit",
+                        uses.stream()
+                                .map(use -> use.unit().map(LabUnit::text).orElse("–"))
+                                .toList())
                 .text("to SI", uses.stream().map(IntakeLog::conversion).toList())
                 .build();
     }

@@ -2,6 +2,7 @@ package org.meltbook.intake;
 
 import java.util.List;
 import java.util.Optional;
+import java.util.stream.Stream;
 import org.meltbook.measure.Heading;
 import org.meltbook.units.LabUnit;
 import org.meltbook.units.Quantity;
@@ -46,6 +47,12 @@ record Layout(List<Use> columns, long unitLine, long body) {
 
     List<Use> with(Role role) {
         return columns.stream().filter(use -> use.role() == role).toList();
+    }
+
+    /** The columns whose numbers are read. */
+    List<Use> numbers() {
+        return Stream.concat(with(Role.NUMBERS).stream(), with(Role.MODULI).stream())
+                .toList();
     }
 
     /** Whether each row names the quantity that it holds. */

@@ -27,8 +27,14 @@ final class LayoutFinder {
 
     /** Quantities that are read where they are found. */
     private static final Set<Quantity> READ = Set.of(
-            Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS, Quantity.SHEAR_RATE,
-            Quantity.SHEAR_STRESS, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE, Quantity.TEMPERATURE);
+            Quantity.ANGULAR_FREQUENCY,
+            Quantity.STORAGE_MODULUS,
+            Quantity.LOSS_MODULUS,
+            Quantity.SHEAR_RATE,
+            Quantity.SHEAR_STRESS,
+            Quantity.VISCOSITY,
+            Quantity.FIRST_NORMAL_STRESS_DIFFERENCE,
+            Quantity.TEMPERATURE);
 
     private final String file;
     private final Options options;
@@ -61,7 +67,10 @@ final class LayoutFinder {
         for (int i = 0; i < headings.size(); i++) {
             Heading heading = withUnit(headings.get(i), i, unitRow);
             boolean numbers = roles.get(i) == Role.NUMBERS || roles.get(i) == Role.MODULI;
-            Optional<LabUnit> unit = numbers ? Optional.of(unit(heading, unitRow)) : Optional.empty();
+            Optional<LabUnit> unit = numbers
+                    ? Optional.of(
+                            unit(heading, unitRow && headings.get(i).unitText().isEmpty()))
+                    : Optional.empty();
             String why = heading.quantity().isPresent() ? "not needed" : "heading not known";
             uses.add(new Use(i, heading, roles.get(i), unit, roles.get(i) == Role.PASSED_OVER ? why : ""));
         }
@@ -72,8 +81,10 @@ final class LayoutFinder {
     private List<Heading> headings() {
         List<String> cells = header.getFields();
         if (cells.stream().allMatch(LayoutFinder::looksLikeNumber)) {
-            throw refused("", "a header that names the columns", "a row of numbers, " + IntakeException.quoted(
-                    String.join(" ", cells)));
+            throw refused(
+                    "",
+                    "a header that names the columns",
+                    "a row of numbers, " + IntakeException.quoted(String.join(" ", cells)));
         }
         List<Heading> headings = new ArrayList<>();
         Set<String> seen = new LinkedHashSet<>();
@@ -94,8 +105,7 @@ final class LayoutFinder {
 
     private static boolean looksLikeNumber(String cell) {
         String text = cell.strip();
-        return text.equalsIgnoreCase("nan")
-                || text.matches("[+−-]?[.,]?\\d[\\d.,]*([eE][+−-]?\\d+)?");
+        return text.equalsIgnoreCase("nan") || text.matches("[+−-]?[.,]?\\d[\\d.,]*([eE][+−-]?\\d+)?");
     }
 
     private int find(List<Heading> headings, String name) {
@@ -108,7 +118,9 @@ final class LayoutFinder {
     }
 
     private static String texts(List<Heading> headings) {
-        return String.join(", ", headings.stream().map(h -> IntakeException.quoted(h.text())).toList());
+        return String.join(
+                ", ",
+                headings.stream().map(h -> IntakeException.quoted(h.text())).toList());
     }
 
     private List<Role> roles(List<Heading> headings) {
@@ -158,7 +170,9 @@ final class LayoutFinder {
             if (roles.get(i) == Role.NUMBERS) {
                 Heading other = first.putIfAbsent(heading.quantity().orElseThrow(), heading);
                 if (other != null) {
-                    throw refused(heading.text(), "one column of " + heading.quantity().get().label(),
+                    throw refused(
+                            heading.text(),
+                            "one column of " + heading.quantity().get().label(),
                             "another one, " + IntakeException.quoted(other.text()));
                 }
             }
@@ -173,10 +187,16 @@ final class LayoutFinder {
             }
         }
         if (!Readings.makeFlowCurve(found) && !Readings.makeFrequencySweep(found)) {
-            String known = found.isEmpty() ? "none of these" : "only " + String.join(", ",
-                    found.stream().map(Quantity::label).toList());
-            throw refused("", Readings.needed(), known + " in the headings " + texts(headings)
-                    + "; Exports.reading(file).where(name, quantity) tells what another name means");
+            String known = found.isEmpty()
+                    ? "none of these"
+                    : "only "
+                            + String.join(
+                                    ", ", found.stream().map(Quantity::label).toList());
+            throw refused(
+                    "",
+                    Readings.needed(),
+                    known + " in the headings " + texts(headings)
+                            + "; Exports.reading(file).where(name, quantity) tells what another name means");
         }
     }
 
@@ -185,8 +205,11 @@ final class LayoutFinder {
         for (int i = 0; i < headings.size(); i++) {
             boolean lacks = (roles.get(i) == Role.NUMBERS || roles.get(i) == Role.MODULI)
                     && withUnit(headings.get(i), i, false).unitText().isEmpty();
-            if (lacks && next.isPresent() && i < next.get().getFieldCount()
-                    && !looksLikeNumber(next.get().getField(i)) && !next.get().getField(i).isBlank()) {
+            if (lacks
+                    && next.isPresent()
+                    && i < next.get().getFieldCount()
+                    && !looksLikeNumber(next.get().getField(i))
+                    && !next.get().getField(i).isBlank()) {
                 return true;
             }
         }
@@ -201,25 +224,37 @@ final class LayoutFinder {
         }
         boolean below = unitRow && index < next.orElseThrow().getFieldCount();
         String cell = below ? next.get().getField(index).strip() : "";
-        return cell.isEmpty() || heading.unitText().isPresent() ? heading : heading.in(cell.replaceAll("^\\[(.*)\\]$|^\\((.*)\\)$", "$1$2"));
+        if (cell.isEmpty() || heading.unitText().isPresent()) {
+            return heading;
+        }
+        return heading.in(cell.replaceAll("^\\[(.*)\\]$|^\\((.*)\\)$", "$1$2"));
     }
 
-    private LabUnit unit(Heading heading, boolean unitRow) {
+    private LabUnit unit(Heading heading, boolean below) {
         Heading measured = heading.quantity().isPresent() ? heading : heading.measuring(Quantity.STORAGE_MODULUS);
         String label = measured.quantity().orElseThrow().label();
-        long line = unitRow ? next.orElseThrow().getStartingLineNumber() : header.getStartingLineNumber();
+        long line = below ? next.orElseThrow().getStartingLineNumber() : header.getStartingLineNumber();
         if (heading.unitText().isEmpty()) {
-            throw refused(heading.text(), "a unit of " + label + " in the heading, as in '" + heading.name() + " ["
-                    + LabUnit.usualFor(measured.quantity().get()).get(0)
-                    + "]', in a row below the header, or in code with Exports.reading(file).unit(\"" + heading.name()
-                    + "\", …)", "none");
+            throw refused(
+                    heading.text(),
+                    "a unit of " + label + " in the heading, as in '" + heading.name() + " ["
+                            + LabUnit.usualFor(measured.quantity().get()).get(0)
+                            + "]', in a row below the header, or in code with Exports.reading(file).unit(\""
+                            + heading.name()
+                            + "\", …)",
+                    "none");
         }
         try {
             return measured.unit();
         } catch (UnitException e) {
             String text = heading.unitText().get();
-            throw new IntakeException(file, line, heading.text(), "a unit of " + label,
-                    IntakeException.quoted(text) + " (" + e.getMessage() + ")").because(e);
+            throw new IntakeException(
+                            file,
+                            line,
+                            heading.text(),
+                            "a unit of " + label,
+                            IntakeException.quoted(text) + " (" + e.getMessage() + ")")
+                    .because(e);
         }
     }
 

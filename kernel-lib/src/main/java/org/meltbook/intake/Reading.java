@@ -1,6 +1,5 @@
 package org.meltbook.intake;
 
-import de.siegmar.fastcsv.reader.CsvReader;
 import de.siegmar.fastcsv.reader.CsvRecord;
 import java.nio.charset.CharacterCodingException;
 import java.nio.file.Path;
@@ -17,8 +16,8 @@ import org.meltbook.units.Quantity;
  * intake log says what was found. Each method gives a new reading; {@link #read} does the work.
  */
 public final class Reading {
-    private static final int BEGINNING_LINES = 200;
-    private static final int BEGINNING_CHARACTERS = 1 << 18;
+    /** As much of a file as is looked at to find its delimiter and header. */
+    private static final int BEGINNING = 1 << 16;
 
     private final Path path;
     private final Options options;
@@ -91,8 +90,10 @@ public final class Reading {
                 throw new IntakeException(file.name(), 0, "", "text in " + file.encoding(), "malformed characters")
                         .because(e);
             }
-            return read(file.asLatin(), new ArrayList<>(List.of("not UTF-8 text: read as ISO 8859-1, in which every byte"
-                    + " is a letter; check µ, ° and names")));
+            return read(
+                    file.asLatin(),
+                    new ArrayList<>(List.of("not UTF-8 text: read as ISO 8859-1, in which every byte"
+                            + " is a letter; check µ, ° and names")));
         }
     }
 
@@ -106,7 +107,7 @@ public final class Reading {
     }
 
     private Intake read(SourceFile file, List<String> warnings) {
-        String beginning = file.beginning(BEGINNING_LINES, BEGINNING_CHARACTERS);
+        String beginning = file.beginning(BEGINNING);
         Delimiter delimiter =
                 options.delimiter().orElseGet(() -> Delimiter.find(file.name(), beginning, options.vocabulary()));
         Layout layout = layout(file, delimiter, beginning);
@@ -130,19 +131,12 @@ public final class Reading {
     }
 
     private Layout layout(SourceFile file, Delimiter delimiter, String beginning) {
-        List<CsvRecord> first = new ArrayList<>();
-        try (CsvReader<CsvRecord> reader = delimiter.reader().ofCsvRecord(beginning)) {
-            for (CsvRecord row : reader) {
-                if (!row.isComment() && first.size() < 2) {
-                    first.add(row);
-                }
-            }
-        } catch (java.io.IOException e) {
-            throw new java.io.UncheckedIOException(e);
-        }
+        List<CsvRecord> first = delimiter.rows(beginning, 2);
         if (first.isEmpty()) {
-            throw new IntakeException(file.name(), 0, "", "a header and rows of numbers", "blank and comment lines only");
+            throw new IntakeException(
+                    file.name(), 0, "", "a header and rows of numbers", "blank and comment lines only");
         }
-        return LayoutFinder.find(file.name(), options, first.get(0), first.stream().skip(1).findFirst());
+        return LayoutFinder.find(
+                file.name(), options, first.get(0), first.stream().skip(1).findFirst());
     }
 }

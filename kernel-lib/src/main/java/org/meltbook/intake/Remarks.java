@@ -53,7 +53,10 @@ final class Remarks {
      */
     OptionalDouble temperature(Vocabulary vocabulary, List<String> warnings) {
         for (Map.Entry<String, String> entry : entries.entrySet()) {
-            if (vocabulary.quantity(entry.getKey()).filter(Quantity.TEMPERATURE::equals).isPresent()) {
+            if (vocabulary
+                    .quantity(entry.getKey())
+                    .filter(Quantity.TEMPERATURE::equals)
+                    .isPresent()) {
                 return kelvin(entry.getValue(), warnings);
             }
         }
@@ -64,13 +67,15 @@ final class Remarks {
         Matcher parts = NUMBER_AND_UNIT.matcher(text);
         try {
             if (parts.matches()) {
-                double value = Double.parseDouble(parts.group(1).replace('−', '-').replace(',', '.'));
+                double value =
+                        Double.parseDouble(parts.group(1).replace('−', '-').replace(',', '.'));
                 double kelvin = LabUnit.parse(parts.group(2)).toSi(Quantity.TEMPERATURE, value);
                 if (kelvin > 0) {
                     return OptionalDouble.of(kelvin);
                 }
             }
-            warnings.add("temperature " + IntakeException.quoted(text) + " is no temperature above absolute zero: kept as a remark");
+            warnings.add("temperature " + IntakeException.quoted(text)
+                    + " is no temperature above absolute zero: kept as a remark");
         } catch (UnitException e) {
             warnings.add("temperature " + IntakeException.quoted(text) + " is not used: " + e.getMessage());
         }

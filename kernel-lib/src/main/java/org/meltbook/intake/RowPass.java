@@ -44,8 +44,13 @@ final class RowPass {
             }
             return text.sha256();
         } catch (CsvParseException e) {
-            throw new IntakeException(file.name(), line + 1, "", "rows of cells",
-                    "text that cannot be cut into cells (" + e.getMessage() + ")").because(e);
+            throw new IntakeException(
+                            file.name(),
+                            line + 1,
+                            "",
+                            "rows of cells",
+                            "text that cannot be cut into cells (" + e.getMessage() + ")")
+                    .because(e);
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }

@@ -4,6 +4,7 @@ import java.io.BufferedInputStream;
 import java.io.IOException;
 import java.io.InputStream;
 import java.io.InputStreamReader;
+import java.io.OutputStream;
 import java.io.Reader;
 import java.io.UncheckedIOException;
 import java.nio.charset.Charset;
@@ -14,8 +15,8 @@ import java.nio.file.Path;
 import java.security.DigestInputStream;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
-import java.util.Arrays;
 import java.util.HexFormat;
+import java.util.stream.IntStream;
 
 /** A text file that can be read more than once: its bytes, its encoding, its SHA-256. */
 final class SourceFile {
@@ -75,15 +76,18 @@ final class SourceFile {
     }
 
     private static boolean startsWith(byte[] head, int... mark) {
-        return head.length >= mark.length
-                && java.util.stream.IntStream.range(0, mark.length).allMatch(i -> (head[i] & 0xFF) == mark[i]);
+        return head.length >= mark.length && IntStream.range(0, mark.length).allMatch(i -> (head[i] & 0xFF) == mark[i]);
     }
 
     private static void refuseBinary(String name, byte[] head) {
         for (int i = 0; i < head.length; i++) {
             boolean text = head[i] < 0 || head[i] >= ' ' || "\t\n\r\f".indexOf(head[i]) >= 0;
             if (!text) {
-                throw new IntakeException(name, 0, "", "delimited text",
+                throw new IntakeException(
+                        name,
+                        0,
+                        "",
+                        "delimited text",
                         "a binary file (byte " + HexFormat.of().toHexDigits(head[i]) + " at place " + (i + 1) + ")");
             }
         }
@@ -132,11 +136,14 @@ final class SourceFile {
     Text open() {
         MessageDigest digest = sha256();
         try {
-            InputStream bytes = new BufferedInputStream(new DigestInputStream(Files.newInputStream(path), digest), HEAD);
+            InputStream bytes =
+                    new BufferedInputStream(new DigestInputStream(Files.newInputStream(path), digest), HEAD);
             bytes.skipNBytes(mark);
-            Reader reader = new InputStreamReader(bytes, charset.newDecoder()
-                    .onMalformedInput(CodingErrorAction.REPORT)
-                    .onUnmappableCharacter(CodingErrorAction.REPORT));
+            Reader reader = new InputStreamReader(
+                    bytes,
+                    charset.newDecoder()
+                            .onMalformedInput(CodingErrorAction.REPORT)
+                            .onUnmappableCharacter(CodingErrorAction.REPORT));
             return new Text(bytes, reader, digest);
         } catch (IOException e) {
             throw unreadable(path, e);
@@ -156,7 +163,7 @@ final class SourceFile {
         /** SHA-256 of the whole file in hexadecimal; reads what is left of it. */
         String sha256() {
             try {
-                bytes.transferTo(java.io.OutputStream.nullOutputStream());
+                bytes.transferTo(OutputStream.nullOutputStream());
             } catch (IOException e) {
                 throw new UncheckedIOException(e);
             }
@@ -173,8 +180,12 @@ final class SourceFile {
         }
     }
 
-    /** The first lines of the file, up to {@code lines} of them, of no more than {@code characters} in all. */
-    String beginning(int lines, int characters) {
+    /**
+     * The first whole lines of the file, of no more than {@code characters} in all.
+     *
+     * @throws IntakeException if the first line is longer than that
+     */
+    String beginning(int characters) {
         char[] buffer = new char[characters];
         int filled = 0;
         try (Text text = open()) {
@@ -184,20 +195,11 @@ final class SourceFile {
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
-        return cut(buffer, filled, lines, filled < characters);
-    }
-
-    /** Whole lines only, unless the file itself ends within one. */
-    private static String cut(char[] buffer, int filled, int lines, boolean wholeFile) {
-        int end = 0;
-        int count = 0;
-        for (int i = 0; i < filled && count < lines; i++) {
-            boolean lineEnds = buffer[i] == '\n' || buffer[i] == '\r' && (i + 1 == filled || buffer[i + 1] != '\n');
-            if (lineEnds) {
-                count++;
-                end = i + 1;
-            }
+        String start = new String(buffer, 0, filled);
+        int lastEnd = Math.max(start.lastIndexOf('\n'), start.lastIndexOf('\r'));
+        if (filled == characters && lastEnd < 0) {
+            throw new IntakeException(name(), 1, "", "a header", "a line of more than " + characters + " characters");
         }
-        return new String(Arrays.copyOf(buffer, wholeFile && count < lines ? filled : end));
+        return filled < characters ? start : start.substring(0, lastEnd + 1);
     }
 }

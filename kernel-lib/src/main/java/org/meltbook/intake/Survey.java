@@ -3,14 +3,13 @@ package org.meltbook.intake;
 import de.siegmar.fastcsv.reader.CsvRecord;
 import java.util.ArrayList;
 import java.util.List;
-import org.meltbook.intake.Layout.Role;
 import org.meltbook.intake.Layout.Use;
 
-/** What a first walk through a file tells: remarks, how many rows there are, which are empty, how decimals are written. */
+/** What a first walk through a file tells: remarks, how many rows there are, which are empty, how decimals look. */
 final class Survey {
     private final String file;
     private final Layout layout;
-    private final List<Use> numbers = new ArrayList<>();
+    private final List<Use> numbers;
     private final DecimalEvidence evidence;
     private final Remarks remarks = new Remarks();
     private final List<Long> emptyLines = new ArrayList<>();
@@ -20,8 +19,7 @@ final class Survey {
         this.file = file;
         this.layout = layout;
         this.evidence = new DecimalEvidence(file);
-        this.numbers.addAll(layout.with(Role.NUMBERS));
-        this.numbers.addAll(layout.with(Role.MODULI));
+        this.numbers = layout.numbers();
     }
 
     /**
@@ -35,8 +33,12 @@ final class Survey {
         }
         int cells = row.getFieldCount();
         if (cells != layout.columns().size()) {
-            throw new IntakeException(file, row.getStartingLineNumber(), "",
-                    layout.columns().size() + " cells, as in the header", cells + (cells == 1 ? " cell" : " cells"));
+            throw new IntakeException(
+                    file,
+                    row.getStartingLineNumber(),
+                    "",
+                    layout.columns().size() + " cells, as in the header",
+                    cells + (cells == 1 ? " cell" : " cells"));
         }
         rowsRead++;
         if (isEmpty(row)) {
@@ -44,7 +46,10 @@ final class Survey {
             return;
         }
         for (Use use : numbers) {
-            evidence.see(row.getField(use.index()), row.getStartingLineNumber(), use.heading().text());
+            evidence.see(
+                    row.getField(use.index()),
+                    row.getStartingLineNumber(),
+                    use.heading().text());
         }
     }
 

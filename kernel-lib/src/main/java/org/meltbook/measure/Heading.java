@@ -19,7 +19,7 @@ public record Heading(String text, String name, Optional<Quantity> quantity, Opt
     private static final Pattern BRACKETS = Pattern.compile("(.*?)\\s*\\[([^\\[\\]]*)\\]");
     private static final Pattern PARENTHESES = Pattern.compile("(.*?)\\s*\\(((?:[^()]|\\([^()]*\\))*)\\)");
 
-    /** The heading of a column, split into name and unit; parentheses that belong to a name, as in tan(δ), stay there. */
+    /** The heading of a column, split into name and unit; parentheses that belong to a name, as in tan(δ), stay. */
     public static Heading of(String text, Vocabulary vocabulary) {
         String whole = text.strip();
         Matcher brackets = BRACKETS.matcher(whole);
@@ -65,8 +65,8 @@ public record Heading(String text, String name, Optional<Quantity> quantity, Opt
         unit.conversion(measured);
         boolean plainFrequency = measured == Quantity.ANGULAR_FREQUENCY && (isNamed("frequency") || isNamed("f"));
         if (plainFrequency && unit.measures(Quantity.SHEAR_RATE)) {
-            throw new UnitException("unit '" + unit + "' beside '" + name + "' may mean Hz or rad/s, which differ by 2π:"
-                    + " write one of the two");
+            throw new UnitException("unit '" + unit + "' beside '" + name
+                    + "' may mean Hz or rad/s, which differ by 2π:" + " write one of the two");
         }
         return unit;
     }

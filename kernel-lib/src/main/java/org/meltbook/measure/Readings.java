@@ -3,7 +3,9 @@ package org.meltbook.measure;
 import java.math.BigDecimal;
 import java.util.ArrayList;
 import java.util.Collection;
+import java.util.Collections;
 import java.util.EnumMap;
+import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
@@ -72,14 +74,16 @@ public final class Readings {
         for (Column other : columns.values()) {
             if (other.series().size() != values.size()) {
                 throw new RangeException(quantity.label() + " has " + values.size() + " rows, "
-                        + other.series().quantity().label() + " has " + other.series().size());
+                        + other.series().quantity().label() + " has "
+                        + other.series().size());
             }
         }
         Conversion conversion = unit.conversion(quantity);
         Map<Quantity, Column> more = new EnumMap<>(Quantity.class);
         more.putAll(columns);
         more.put(quantity, new Column(new Series(quantity, conversion.toSi(values), unit.text()), conversion, digits));
-        return new Readings(step, conditions, more, conversion.isIdentity() ? trail : noted(quantity, unit, conversion));
+        return new Readings(
+                step, conditions, more, conversion.isIdentity() ? trail : noted(quantity, unit, conversion));
     }
 
     /** The same with one more column, whose digits are those of the shortest decimal text of its numbers. */
@@ -139,22 +143,39 @@ public final class Readings {
 
     /** The frequency sweep of a storage and a loss modulus that have frequencies of their own. */
     public static FrequencySweep frequencySweep(Readings storage, Readings loss) {
-        List<Note> notes = Stream.concat(storage.trail.stream(), loss.trail.stream()).distinct().toList();
+        List<Note> notes = Stream.concat(storage.trail.stream(), loss.trail.stream())
+                .distinct()
+                .toList();
         return FrequencySweep.of(
-                storage.conditions, storage.modulus(Quantity.STORAGE_MODULUS), loss.modulus(Quantity.LOSS_MODULUS), notes);
+                storage.conditions,
+                storage.modulus(Quantity.STORAGE_MODULUS),
+                loss.modulus(Quantity.LOSS_MODULUS),
+                notes);
     }
 
     private Curve modulus(Quantity modulus) {
-        Series frequency = column(Quantity.ANGULAR_FREQUENCY).series();
-        Series values = column(modulus).series();
-        return new Curve(frequency, values, verdicts(values.size(), row -> checked(
-                Quantity.ANGULAR_FREQUENCY, frequency.at(row), RowCheck.aboveZero(modulus, values.at(row)))));
+        List<Verdict> frequencies = scanned(Quantity.ANGULAR_FREQUENCY);
+        return over(Quantity.ANGULAR_FREQUENCY, frequencies, modulus, RowCheck::aboveZero);
     }
 
-    /** Without a rate or frequency to stand at, nothing more need be said of a row. */
-    private static Verdict checked(Quantity scanned, double value, Verdict other) {
-        Verdict first = RowCheck.aboveZero(scanned, value);
-        return first.usable() ? first.and(other) : first;
+    /** What is said of each rate or frequency. */
+    private List<Verdict> scanned(Quantity quantity) {
+        Series series = column(quantity).series();
+        return verdicts(series.size(), row -> RowCheck.aboveZero(quantity, series.at(row)));
+    }
+
+    /** What a check says of one number of a quantity. */
+    private interface Check {
+        Verdict of(Quantity quantity, double value);
+    }
+
+    /** One quantity over another. Without a rate or frequency to stand at, nothing more need be said of a row. */
+    private Curve over(Quantity x, List<Verdict> scanned, Quantity y, Check check) {
+        Series values = column(y).series();
+        return new Curve(column(x).series(), values, verdicts(values.size(), row -> {
+            Verdict first = scanned.get(row);
+            return first.usable() ? first.and(check.of(y, values.at(row))) : first;
+        }));
     }
 
     /**
@@ -165,16 +186,22 @@ public final class Readings {
      */
     public FlowCurve flowCurve() {
         Readings full = completed();
+        List<Verdict> rates = full.scanned(Quantity.SHEAR_RATE);
+        List<Verdict> products = full == this ? products() : Collections.nCopies(rates.size(), Verdict.SOUND);
         Optional<Curve> normal = Optional.of(Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
                 .filter(columns::containsKey)
-                .map(quantity -> full.overRate(quantity, RowCheck::normalStress));
-        boolean allGiven = full == this;
-        return FlowCurve.of(
-                conditions,
-                full.overRate(Quantity.SHEAR_STRESS, RowCheck::aboveZero, allGiven),
-                full.overRate(Quantity.VISCOSITY, RowCheck::aboveZero, allGiven),
-                normal,
-                full.trail);
+                .map(quantity -> full.over(Quantity.SHEAR_RATE, rates, quantity, RowCheck::normalStress));
+        Curve stress = full.over(Quantity.SHEAR_RATE, rates, Quantity.SHEAR_STRESS, RowCheck::aboveZero);
+        Curve viscosity = full.over(Quantity.SHEAR_RATE, rates, Quantity.VISCOSITY, RowCheck::aboveZero);
+        return FlowCurve.of(conditions, also(stress, products), also(viscosity, products), normal, full.trail);
+    }
+
+    /** The curve in which usable points carry a second verdict too. */
+    private static Curve also(Curve curve, List<Verdict> second) {
+        return new Curve(curve.x(), curve.y(), verdicts(curve.size(), row -> {
+            Verdict first = curve.verdicts().get(row);
+            return first.usable() ? first.and(second.get(row)) : first;
+        }));
     }
 
     private Readings completed() {
@@ -188,23 +215,26 @@ public final class Readings {
     }
 
     private Readings withThird(Quantity missing) {
-        Column first = column(STEADY_SHEAR.stream().filter(q -> q != missing).findFirst().orElseThrow());
+        Column first = column(
+                STEADY_SHEAR.stream().filter(q -> q != missing).findFirst().orElseThrow());
         int size = first.series().size();
         double[] third = new double[size];
         for (int row = 0; row < size; row++) {
-            double value = switch (missing) {
-                case SHEAR_RATE -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.VISCOSITY, row);
-                case SHEAR_STRESS -> at(Quantity.VISCOSITY, row) * at(Quantity.SHEAR_RATE, row);
-                default -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.SHEAR_RATE, row);
-            };
+            double value =
+                    switch (missing) {
+                        case SHEAR_RATE -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.VISCOSITY, row);
+                        case SHEAR_STRESS -> at(Quantity.VISCOSITY, row) * at(Quantity.SHEAR_RATE, row);
+                        default -> at(Quantity.SHEAR_STRESS, row) / at(Quantity.SHEAR_RATE, row);
+                    };
             third[row] = Double.isFinite(value) ? value : Double.NaN;
         }
         Readings more = with(missing, LabUnit.parse(missing.siUnit()), Doubles.of(third), MOST_DIGITS);
-        String how = switch (missing) {
-            case SHEAR_RATE -> "shear stress / viscosity";
-            case SHEAR_STRESS -> "viscosity × shear rate";
-            default -> "shear stress / shear rate";
-        };
+        String how =
+                switch (missing) {
+                    case SHEAR_RATE -> "shear stress / viscosity";
+                    case SHEAR_STRESS -> "viscosity × shear rate";
+                    default -> "shear stress / shear rate";
+                };
         List<Note> notes = more.longer(missing.label() + " was not given: computed as " + how);
         return new Readings(step, conditions, more.columns, notes);
     }
@@ -213,31 +243,22 @@ public final class Readings {
         return columns.get(quantity).series().at(row);
     }
 
-    /** What a check says of one number of a quantity. */
-    private interface Check {
-        Verdict of(Quantity quantity, double value);
-    }
-
-    private Curve overRate(Quantity quantity, Check check) {
-        return overRate(quantity, check, false);
-    }
-
-    private Curve overRate(Quantity quantity, Check check, boolean compareThree) {
-        Series rate = column(Quantity.SHEAR_RATE).series();
-        Series values = column(quantity).series();
-        return new Curve(rate, values, verdicts(values.size(), row -> {
-            Verdict verdict = checked(Quantity.SHEAR_RATE, rate.at(row), check.of(quantity, values.at(row)));
-            return compareThree && verdict.usable() ? verdict.and(productOf(row)) : verdict;
-        }));
-    }
-
-    private Verdict productOf(int row) {
-        double allowed = 0;
-        for (Quantity quantity : STEADY_SHEAR) {
-            allowed += columns.get(quantity).rounding(row);
-        }
-        return RowCheck.product(
-                at(Quantity.SHEAR_RATE, row), at(Quantity.SHEAR_STRESS, row), at(Quantity.VISCOSITY, row), allowed);
+    /** Whether stress, rate and viscosity of each row agree within the digits given. */
+    private List<Verdict> products() {
+        Map<List<Double>, Verdict> said = new HashMap<>();
+        return verdicts(column(Quantity.SHEAR_RATE).series().size(), row -> {
+            double allowed = 0;
+            for (Quantity quantity : STEADY_SHEAR) {
+                allowed += columns.get(quantity).rounding(row);
+            }
+            double off = RowCheck.offProduct(
+                    at(Quantity.SHEAR_RATE, row), at(Quantity.SHEAR_STRESS, row), at(Quantity.VISCOSITY, row), allowed);
+            return off == 0
+                    ? Verdict.SOUND
+                    : said.computeIfAbsent(
+                            List.of(RowCheck.twoDigits(off), RowCheck.twoDigits(allowed)),
+                            key -> RowCheck.offProduct(key.get(0), key.get(1)));
+        });
     }
 
     private static List<Verdict> verdicts(int size, IntFunction<Verdict> check) {
@@ -249,7 +270,8 @@ public final class Readings {
     private Column column(Quantity quantity) {
         if (!columns.containsKey(quantity)) {
             throw new RangeException("no column of " + quantity.label() + "; there is "
-                    + String.join(", ", columns.keySet().stream().map(Quantity::label).toList()));
+                    + String.join(
+                            ", ", columns.keySet().stream().map(Quantity::label).toList()));
         }
         return columns.get(quantity);
     }

@@ -15,7 +15,9 @@ final class RowCheck {
         if (value > 0 && value < Double.POSITIVE_INFINITY) {
             return Verdict.SOUND;
         }
-        String why = Double.isNaN(value) ? " is not a number" : value == 0 ? " is zero" : value < 0 ? " is negative" : " is infinite";
+        String why = Double.isNaN(value)
+                ? " is not a number"
+                : value == 0 ? " is zero" : value < 0 ? " is negative" : " is infinite";
         String number = Double.isNaN(value) || value == 0 ? "" : " " + NumberText.of(value) + " " + quantity.siUnit();
         return Verdict.unusable(quantity.label() + number + why);
     }
@@ -27,18 +29,26 @@ final class RowCheck {
     }
 
     /**
-     * Whether stress is viscosity times rate, as far as the digits given can tell.
+     * How far stress is off viscosity times rate, relative to the larger; 0 if the digits given explain it.
      *
      * @param allowed relative rounding of the three numbers together, no unit
      */
-    static Verdict product(double rate, double stress, double viscosity, double allowed) {
+    static double offProduct(double rate, double stress, double viscosity, double allowed) {
         double product = viscosity * rate;
         double off = Math.abs(stress - product) / Math.max(Math.abs(stress), Math.abs(product));
-        if (!(off > Math.max(allowed, ARITHMETIC))) {
-            return Verdict.SOUND;
-        }
-        return Verdict.doubtful("shear stress " + NumberText.of(stress) + " Pa is "
-                + NumberText.of(100 * off, 2) + " % off viscosity × shear rate = " + NumberText.of(product)
-                + " Pa, where the digits given allow " + NumberText.of(100 * allowed, 2) + " %");
+        return off > Math.max(allowed, ARITHMETIC) ? off : 0;
+    }
+
+    /** What to say of a row whose stress is off by this, where the digits allow that; both relative. */
+    static Verdict offProduct(double off, double allowed) {
+        return Verdict.doubtful("shear stress is " + NumberText.of(100 * off, 2)
+                + " % off viscosity × shear rate, where the digits given allow " + NumberText.of(100 * allowed, 2)
+                + " %");
+    }
+
+    /** The number with two significant digits, so that rows which say the same share one verdict. */
+    static double twoDigits(double value) {
+        double step = Math.pow(10, Math.floor(Math.log10(value)) - 1);
+        return Math.rint(value / step) * step;
     }
 }

@@ -1,6 +1,7 @@
 package org.meltbook.measure;
 
 import java.text.Normalizer;
+import java.util.Arrays;
 import java.util.HashMap;
 import java.util.Locale;
 import java.util.Map;
@@ -15,8 +16,8 @@ import org.meltbook.units.Quantity;
  */
 public final class Vocabulary {
     private static final Pattern WORD = Pattern.compile("[A-Za-z]{3}");
-    private static final Vocabulary STANDARD = new Vocabulary(Map.of())
-            .and(Quantity.ANGULAR_FREQUENCY, "omega", "w", "frequency", "f")
+    private static final Vocabulary STANDARD = nomenclature()
+            .and(Quantity.ANGULAR_FREQUENCY, "omega", "frequency", "f")
             .and(Quantity.SHEAR_RATE, "rate", "gamma dot", "dγ/dt")
             .and(Quantity.EXTENSION_RATE, "extension rate", "epsilon dot")
             .and(Quantity.SHEAR_STRESS, "stress", "sigma", "τ", "tau")
@@ -51,8 +52,21 @@ public final class Vocabulary {
         return new Vocabulary(Map.copyOf(more));
     }
 
+    /** Each quantity by its label and its symbol; a symbol that two quantities share names neither. */
+    private static Vocabulary nomenclature() {
+        Vocabulary names = new Vocabulary(Map.of());
+        for (Quantity quantity : Quantity.values()) {
+            boolean shared = Arrays.stream(Quantity.values())
+                    .anyMatch(other -> other != quantity && key(other.symbol()).equals(key(quantity.symbol())));
+            names = shared
+                    ? names.and(quantity, quantity.label())
+                    : names.and(quantity, quantity.label(), quantity.symbol());
+        }
+        return names;
+    }
+
     private Vocabulary and(Quantity quantity, String... others) {
-        Vocabulary more = with(quantity.label(), quantity).with(quantity.symbol(), quantity);
+        Vocabulary more = this;
         for (String other : others) {
             more = more.with(other, quantity);
         }

@@ -23,10 +23,7 @@ import tech.tablesaw.columns.Column;
 /** Finds the columns of a measurement in a table by their headings. */
 final class TableReading {
     private static final List<Quantity> STEADY_SHEAR = List.of(
-            Quantity.SHEAR_RATE,
-            Quantity.SHEAR_STRESS,
-            Quantity.VISCOSITY,
-            Quantity.FIRST_NORMAL_STRESS_DIFFERENCE);
+            Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY, Quantity.FIRST_NORMAL_STRESS_DIFFERENCE);
 
     private final Table table;
     private final Conditions conditions;
@@ -46,8 +43,9 @@ final class TableReading {
 
     FrequencySweep frequencySweep() {
         if (!isLong()) {
-            return readings(List.of(
-                            Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS), allRows())
+            return readings(
+                            List.of(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS),
+                            allRows())
                     .frequencySweep();
         }
         return Readings.frequencySweep(modulus(Quantity.STORAGE_MODULUS), modulus(Quantity.LOSS_MODULUS));
@@ -76,7 +74,8 @@ final class TableReading {
     }
 
     private boolean isLong() {
-        return heading(h -> h.isNamed("quantity")).isPresent() && heading(h -> h.isNamed("modulus")).isPresent();
+        return heading(h -> h.isNamed("quantity")).isPresent()
+                && heading(h -> h.isNamed("modulus")).isPresent();
     }
 
     private Readings modulus(Quantity kind) {
@@ -105,12 +104,13 @@ final class TableReading {
     }
 
     private int[] rowsOf(Quantity kind) {
-        Column<?> kinds = table.column(headings.indexOf(heading(h -> h.isNamed("quantity")).orElseThrow()));
+        Column<?> kinds = table.column(
+                headings.indexOf(heading(h -> h.isNamed("quantity")).orElseThrow()));
         for (int row = 0; row < table.rowCount(); row++) {
             Optional<Quantity> named = vocabulary.quantity(kinds.getString(row));
             if (named.filter(TableReading::isModulus).isEmpty()) {
-                throw new RangeException("table '" + table.name() + "', row " + (row + 1) + ", column 'quantity': expected"
-                        + " storage or loss, found '" + kinds.getString(row) + "'");
+                throw new RangeException("table '" + table.name() + "', row " + (row + 1)
+                        + ", column 'quantity': expected" + " storage or loss, found '" + kinds.getString(row) + "'");
             }
         }
         return IntStream.range(0, table.rowCount())
@@ -124,7 +124,7 @@ final class TableReading {
         if (column instanceof NumericColumn<?> numbers) {
             return Doubles.of(IntStream.of(rows).mapToDouble(numbers::getDouble).toArray());
         }
-        throw new RangeException("table '" + table.name() + "', column '" + heading.text() + "': expected numbers, found "
-                + column.type().name());
+        throw new RangeException("table '" + table.name() + "', column '" + heading.text()
+                + "': expected numbers, found " + column.type().name());
     }
 }

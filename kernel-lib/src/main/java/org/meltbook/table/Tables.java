@@ -67,8 +67,9 @@ public final class Tables {
         if (measurement instanceof FrequencySweep sweep) {
             return stacked(sweep);
         }
-        throw new RangeException(measurement.kind() + " of '" + measurement.conditions().sample() + "' makes " + parts.size()
-                + " tables, which do not fit into one: use Tables.each");
+        throw new RangeException(
+                measurement.kind() + " of '" + measurement.conditions().sample() + "' makes " + parts.size()
+                        + " tables, which do not fit into one: use Tables.each");
     }
 
     /** One column of verdicts if all curves have the same, else one for each curve; none if there is nothing to say. */
@@ -79,8 +80,10 @@ public final class Tables {
         table.removeColumns(VerdictText.HEADING);
         boolean same = curves.stream().map(Curve::verdicts).distinct().count() == 1;
         for (Curve curve : same ? curves.subList(0, 1) : curves) {
-            String heading = same ? VerdictText.HEADING : VerdictText.heading(curve.y().quantity());
-            table.addColumns(StringColumn.create(heading, curve.verdicts().stream().map(VerdictText::of)));
+            String heading =
+                    same ? VerdictText.HEADING : VerdictText.heading(curve.y().quantity());
+            table.addColumns(
+                    StringColumn.create(heading, curve.verdicts().stream().map(VerdictText::of)));
         }
         return table;
     }
@@ -94,7 +97,8 @@ public final class Tables {
         Curve storage = sweep.storage();
         Curve loss = sweep.loss();
         List<String> kinds = Stream.concat(
-                        storage.verdicts().stream().map(v -> "storage"), loss.verdicts().stream().map(v -> "loss"))
+                        storage.verdicts().stream().map(v -> "storage"),
+                        loss.verdicts().stream().map(v -> "loss"))
                 .toList();
         List<String> verdicts = Stream.concat(storage.verdicts().stream(), loss.verdicts().stream())
                 .map(VerdictText::of)
@@ -102,8 +106,10 @@ public final class Tables {
         Table table = Table.create(
                 sweep.conditions().sample(),
                 StringColumn.create("quantity", kinds),
-                DoubleColumn.create("ω [rad/s]", join(storage.x().toArray(), loss.x().toArray())),
-                DoubleColumn.create("modulus [Pa]", join(storage.y().toArray(), loss.y().toArray())));
+                DoubleColumn.create(
+                        "ω [rad/s]", join(storage.x().toArray(), loss.x().toArray())),
+                DoubleColumn.create(
+                        "modulus [Pa]", join(storage.y().toArray(), loss.y().toArray())));
         return verdicts.stream().allMatch(String::isEmpty)
                 ? table
                 : table.addColumns(StringColumn.create(VerdictText.HEADING, verdicts));
@@ -134,8 +140,8 @@ public final class Tables {
     }
 
     /**
-     * The flow curve in a table whose headings name quantity and unit, as in a file: any two of shear rate, shear stress
-     * and viscosity, with the first normal stress difference where it is there. Verdicts, as
+     * The flow curve in a table whose headings name quantity and unit, as in a file: any two of shear rate, shear
+     * stress and viscosity, with the first normal stress difference where it is there. Verdicts, as
      * {@link #of(Measurement)} writes them, are honoured.
      *
      * @throws RangeException                    if a column is missing or does not hold numbers

@@ -4,8 +4,8 @@ import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 
 /**
- * How numbers of one unit become SI: {@code si = value · multiplier / divisor + offset}. One of multiplier and divisor is
- * 1, so that 12 mPa·s becomes 12/1000 Pa·s, rounded once.
+ * How numbers of one unit become SI: {@code si = value · multiplier / divisor + offset}. One of multiplier and divisor
+ * is 1, so that 12 mPa·s becomes 12/1000 Pa·s, rounded once.
  *
  * @param multiplier above zero, no unit
  * @param divisor    above zero, no unit

@@ -16,8 +16,8 @@ import tech.units.indriya.function.RationalNumber;
 
 /**
  * A unit as it is written in a laboratory file: {@code Pa.s}, {@code mPa·s}, {@code s⁻¹}, {@code °C}, {@code g/10 min}.
- * What it may measure, and by which factor, is decided together with a {@link Quantity}: 1 Hz of an angular frequency is
- * 2π rad/s, and Hz is no unit of a shear rate.
+ * What it may measure, and by which factor, is decided together with a {@link Quantity}: 1 Hz of an angular frequency
+ * is 2π rad/s, and Hz is no unit of a shear rate.
  */
 public final class LabUnit {
     private static final int CACHED = 1_000;
@@ -97,7 +97,7 @@ public final class LabUnit {
     /**
      * How numbers of the quantity in this unit become SI.
      *
-     * @throws UnitException if the unit cannot measure the quantity: the message says what the unit is and which would do
+     * @throws UnitException if the unit cannot measure the quantity: the message says what it is and which would do
      */
     public Conversion conversion(Quantity quantity) {
         return conversions.computeIfAbsent(quantity, this::findConversion);
@@ -111,6 +111,9 @@ public final class LabUnit {
         UnitConverter converter = converterTo(parse(quantity.siUnit()));
         BigDecimal offset = decimal(converter.convert(BigDecimal.ZERO));
         BigDecimal scale = decimal(converter.convert(BigDecimal.ONE)).subtract(offset);
+        if (!(scale.doubleValue() > 0 && scale.doubleValue() < Double.POSITIVE_INFINITY)) {
+            throw new UnitException("unit '" + text + "' has a size of " + scale + ", expected one above zero");
+        }
         double cycles = is(Trait.CYCLES) ? 2 * Math.PI : 1;
         return Conversion.of(scale.doubleValue() * cycles, offset.doubleValue());
     }
@@ -148,7 +151,7 @@ public final class LabUnit {
     private UnitConverter converterTo(LabUnit other) {
         try {
             return unit.getConverterToAny(other.unit);
-        } catch (IncommensurableException e) {
+        } catch (IncommensurableException | UnsupportedOperationException e) {
             throw new UnitException("unit '" + text + "' cannot be given in " + other.text + ": it is " + kind());
         }
     }

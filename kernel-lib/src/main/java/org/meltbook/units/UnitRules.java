@@ -91,9 +91,7 @@ final class UnitRules {
                 && !unit.is(Trait.CYCLES)
                 && !unit.is(Trait.ANGLE)
                 && unit.scaleTo(LabUnit.parse("1/s")) != 1;
-        return perOtherTime
-                ? Optional.of(refusal(unit, quantity, "may count turns or radians"))
-                : Optional.empty();
+        return perOtherTime ? Optional.of(refusal(unit, quantity, "may count turns or radians")) : Optional.empty();
     }
 
     private static boolean traitsFit(LabUnit unit, Quantity quantity) {

@@ -113,7 +113,8 @@ record UnitSpelling(String code, Set<Trait> traits) {
                 .replaceAll("\\s+", " ")
                 .strip();
         if (plain.isEmpty()) {
-            throw new UnitException("a unit is missing: found blank text, expected a unit such as Pa, 1/s, or 1 for none");
+            throw new UnitException(
+                    "a unit is missing: found blank text, expected a unit such as Pa, 1/s, or 1 for none");
         }
         return plain;
     }
@@ -126,15 +127,27 @@ record UnitSpelling(String code, Set<Trait> traits) {
             depth += c == '(' ? 1 : c == ')' ? -1 : 0;
             divided |= c == '/' && depth == 0;
             if (c == '.' && depth == 0 && divided) {
-                throw new UnitException("'" + text + "' can be read in two ways, as a/(b·c) and as (a/b)·c: put brackets,"
-                        + " as in g/(10.min) or W/(m·K)");
+                throw new UnitException(
+                        "'" + text + "' can be read in two ways, as a/(b·c) and as (a/b)·c: put brackets,"
+                                + " as in g/(10.min) or W/(m·K)");
             }
         }
         if (joined.matches(".*\\d\\.\\d.*")) {
             throw new UnitException("'" + text + "' holds a decimal number, which has no place in a unit");
         }
+        if (joined.matches("\\d.*") && !joined.matches("1(/.*)?")) {
+            throw new UnitException("'" + text + "' begins with a number, which belongs to the values");
+        }
         if (joined.indexOf('{') >= 0) {
-            throw new UnitException("'" + text + "' holds braces, which UCUM passes over; expected a unit without remarks");
+            throw new UnitException(
+                    "'" + text + "' holds braces, which UCUM passes over; expected a unit without remarks");
+        }
+    }
+
+    /** A squared angle has the dimension of an angle, which is none: it must not pass for one. */
+    private static void refusePower(String joined, int end) {
+        if (end < joined.length() && "+-0123456789".indexOf(joined.charAt(end)) >= 0) {
+            throw new UnitException("'" + joined + "' holds a power of an angle, which measures nothing here");
         }
     }
 
@@ -148,6 +161,7 @@ record UnitSpelling(String code, Set<Trait> traits) {
             if (name.endsWith("Hz") || name.equals("rpm")) {
                 traits.add(Trait.CYCLES);
             } else if (ANGLE_NAME.matcher(ucum).matches()) {
+                refusePower(joined, names.end());
                 traits.add(Trait.ANGLE);
             }
             names.appendReplacement(code, Matcher.quoteReplacement(ucum));

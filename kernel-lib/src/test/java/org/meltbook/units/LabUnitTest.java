@@ -16,8 +16,8 @@ import org.junit.jupiter.params.provider.ValueSource;
 
 class LabUnitTest {
     /**
-     * Factors of NIST Special Publication 811 (2008), appendix B, quoted from memory: those of bar, poise, stokes, inch,
-     * kgf, atmosphere, minute, degree are exact there; psi (6.894757 E+03) and lbf (4.448222) are rounded to seven digits.
+     * Factors of NIST Special Publication 811 (2008), appendix B, quoted from memory: those of bar, poise, inch, kgf,
+     * atmosphere, minute and degree are exact there; psi (6.894757 E+03) and lbf (4.448222) are rounded to 7 digits.
      */
     @ParameterizedTest(name = "1 {0} of {1} is {2}")
     @CsvSource(
@@ -110,7 +110,23 @@ class LabUnitTest {
     }
 
     @ParameterizedTest
-    @ValueSource(strings = {"furlongs", "Pa~s", "12..", "((", "Pa·", "n.a.", "£", "Pa/", "g per 10 min", "1,5", "{rpm}"})
+    @ValueSource(
+            strings = {
+                "furlongs",
+                "Pa~s",
+                "12..",
+                "((",
+                "Pa·",
+                "n.a.",
+                "£",
+                "Pa/",
+                "g per 10 min",
+                "1,5",
+                "{rpm}",
+                "80 °C",
+                "0/s",
+                "2 Pa"
+            })
     void rejects_an_unknown_unit_by_name(String unknown) {
         assertMessage("'" + unknown + "'", () -> LabUnit.parse(unknown));
     }
@@ -144,13 +160,14 @@ class LabUnitTest {
         assertFalse(LabUnit.parse("vol%").measures(Quantity.MASS_FRACTION));
         assertFalse(LabUnit.parse("°").measures(Quantity.SHEAR_STRAIN));
         assertFalse(LabUnit.parse("%").measures(Quantity.ANGLE));
+        assertMessage("power of an angle", () -> LabUnit.parse("rad²"));
         assertTrue(LabUnit.parse("-").measures(Quantity.LOSS_TANGENT));
     }
 
     @Test
     void an_error_names_unit_quantity_kind_and_what_would_do() {
-        UnitException refused = assertThrows(
-                UnitException.class, () -> LabUnit.parse("kPa").toSi(Quantity.SHEAR_RATE, 1));
+        UnitException refused =
+                assertThrows(UnitException.class, () -> LabUnit.parse("kPa").toSi(Quantity.SHEAR_RATE, 1));
         assertEquals(
                 "unit 'kPa' cannot measure shear rate: it is a stress, modulus or pressure; units that would do: 1/s, "
                         + "1/min, %/s",
@@ -181,16 +198,49 @@ class LabUnitTest {
 
     @Test
     void says_what_a_conversion_does() {
-        assertEquals("× 1000", LabUnit.parse("kPa").conversion(Quantity.PRESSURE).toString());
-        assertEquals("÷ 1000", LabUnit.parse("mPa·s").conversion(Quantity.VISCOSITY).toString());
-        assertEquals("+ 273.15", LabUnit.parse("°C").conversion(Quantity.TEMPERATURE).toString());
-        assertEquals("as it is", LabUnit.parse("Pa").conversion(Quantity.PRESSURE).toString());
-        assertEquals("× 6.28319", LabUnit.parse("Hz").conversion(Quantity.ANGULAR_FREQUENCY).toString());
+        assertEquals(
+                "× 1000", LabUnit.parse("kPa").conversion(Quantity.PRESSURE).toString());
+        assertEquals(
+                "÷ 1000", LabUnit.parse("mPa·s").conversion(Quantity.VISCOSITY).toString());
+        assertEquals(
+                "+ 273.15", LabUnit.parse("°C").conversion(Quantity.TEMPERATURE).toString());
+        assertEquals(
+                "as it is", LabUnit.parse("Pa").conversion(Quantity.PRESSURE).toString());
+        assertEquals(
+                "× 6.28319",
+                LabUnit.parse("Hz").conversion(Quantity.ANGULAR_FREQUENCY).toString());
     }
 
     @Test
     void divides_once_where_a_factor_has_no_exact_double() {
         assertEquals(12.3 / 1000, LabUnit.parse("mPa·s").toSi(Quantity.VISCOSITY, 12.3), 0);
+    }
+
+    /** Whatever stands in a heading, the answer is a unit or the one error: nothing of the library behind shows. */
+    @Test
+    void any_text_is_a_unit_or_a_unit_error() {
+        Random random = new Random(385);
+        String letters = "PasmkrdHzCelgNb%°µ·./()[]^-+0123 {}*'\"~_€Ω";
+        int known = 0;
+        for (int i = 0; i < 3_000; i++) {
+            StringBuilder text = new StringBuilder();
+            for (int length = 1 + random.nextInt(7); length > 0; length--) {
+                text.append(letters.charAt(random.nextInt(letters.length())));
+            }
+            try {
+                LabUnit unit = LabUnit.parse(text.toString());
+                known++;
+                unit.kind();
+                for (Quantity quantity : Quantity.values()) {
+                    if (unit.measures(quantity)) {
+                        assertTrue(unit.toSi(quantity, 1) > 0, text.toString());
+                    }
+                }
+            } catch (UnitException expected) {
+                assertFalse(expected.getMessage().isBlank());
+            }
+        }
+        assertTrue(known > 50, "only " + known + " texts were units: the letters should be chosen anew");
     }
 
     @Test
