@@ -45,8 +45,8 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
     @Override
     public List<String> limits() {
         return List.of(
-                "in steady shear this model does not thin, and its N₁ grows with the square of the rate without end: "
-                        + "N₁ of a melt departs from Wi ≈ " + NORMAL_STRESS_LIMIT + " on, here "
+                "in steady shear this model does not thin, and its N₁ grows with the square of the rate without end",
+                "melts depart from it early: N₁ from Wi ≈ " + NORMAL_STRESS_LIMIT + " on, here "
                         + rate(NORMAL_STRESS_LIMIT) + " (12 % below the model), η from Wi ≈ " + VISCOSITY_LIMIT
                         + " on, here " + rate(VISCOSITY_LIMIT)
                         + " (7 % below); computed for LDPE Melt I with the damped integral model",

@@ -137,7 +137,7 @@ public final class SpectrumFit implements Exhibit {
     public String headline() {
         return "Relaxation spectrum" + of(sweep.conditions().sample()) + ": " + modeCount() + " within "
                 + NumberText.of(100 * rootMeanSquare(), 2) + " % (root mean square); "
-                + limits.zone().verdict() + ", η₀ " + viscosityWords() + ".";
+                + limits.zone().verdict() + "; η₀ " + viscosityWords() + ".";
     }
 
     private String modeCount() {

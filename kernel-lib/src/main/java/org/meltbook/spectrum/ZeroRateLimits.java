@@ -126,8 +126,8 @@ final class ZeroRateLimits {
                 VISCOSITY,
                 Quantity.VISCOSITY,
                 joint.interval(spectrum -> spectrum.complexViscosity(at)).low(),
-                NOT_REACHED + zone.lossWords() + "; the bound is " + bound("|η*|", at)
-                        + "; the fitted spectrum ends at " + NumberText.of(limit) + " Pa·s (extrapolated)");
+                NOT_REACHED + zone.lossWords() + "; the bound is " + bound("|η*|", at) + "; the fitted spectrum gives "
+                        + NumberText.of(limit) + " Pa·s (extrapolated)");
     }
 
     /** J′ = G′/(G′² + G″²) never exceeds Jₑ⁰, so its value at the low end of the window is a bound. */
@@ -139,8 +139,8 @@ final class ZeroRateLimits {
                 COMPLIANCE,
                 Quantity.COMPLIANCE,
                 joint.interval(spectrum -> storageCompliance(spectrum, at)).low(),
-                NOT_REACHED + zone.storageWords() + "; the bound is " + bound("J′", at)
-                        + "; the fitted spectrum ends at " + NumberText.of(limit) + " 1/Pa (extrapolated)");
+                NOT_REACHED + zone.storageWords() + "; the bound is " + bound("J′", at) + "; the fitted spectrum gives "
+                        + NumberText.of(limit) + " 1/Pa (extrapolated)");
     }
 
     private static double storageCompliance(RelaxationSpectrum spectrum, double frequency) {
@@ -150,7 +150,7 @@ final class ZeroRateLimits {
     }
 
     private static String bound(String symbol, double frequency) {
-        return "the low end of the 95 % interval of " + symbol + " at " + NumberText.of(frequency) + " rad/s";
+        return symbol + " at " + NumberText.of(frequency) + " rad/s, low end of its 95 % interval";
     }
 
     private static Prediction limit(String name, Quantity quantity, double value) {

@@ -28,7 +28,7 @@ import org.meltbook.units.Quantity;
  * <p>The zero-shear viscosity is given as a plain number only if the plateau was measured. Three things are asked of
  * the points within half a decade of the lowest rate (three points at least); the limits are common practice, not a
  * standard: the measured slope d ln η / d ln γ̇ lies within 0.1 of zero; the law at the lowest rate is within 5 % of
- * its limit at rate zero; the law lies within 5 % of the measured mean. Otherwise the mean of these points is a lower
+ * its limit at rate zero; the law lies within 5 % of the measured mean. Otherwise the lowest of these points is a lower
  * bound, if the viscosity does not rise with the rate there; if the law meets these points, its limit stands beside the
  * bound, marked as extrapolated.
  */
@@ -110,8 +110,8 @@ public final class ViscosityFit implements Exhibit {
         return Prediction.atLeast(
                 ZERO_SHEAR,
                 Quantity.VISCOSITY,
-                low.mean(),
-                reason + "; the bound is the mean of the " + low.rates().size() + " points at the low end" + beside);
+                low.viscosities().smallest(),
+                reason + "; the bound is the lowest of the " + low.rates().size() + " points at the low end" + beside);
     }
 
     /**
@@ -201,10 +201,10 @@ public final class ViscosityFit implements Exhibit {
     private String plateau() {
         Prediction zeroShear = zeroShearViscosity();
         return switch (zeroShear.standing()) {
-            case AT_LEAST -> "; " + ZERO_SHEAR + " at least " + NumberText.of(zeroShear.low()) + " Pa·s"
-                    + extrapolatedLimit()
-                            .map(limit -> " (the law's limit is extrapolated)")
-                            .orElse("");
+            case AT_LEAST -> (extrapolatedLimit().isPresent()
+                            ? "; this η₀ is extrapolated, the points give at least "
+                            : "; the points give a " + ZERO_SHEAR + " of at least ")
+                    + NumberText.of(zeroShear.low()) + " Pa·s";
             case UNDETERMINED -> "; " + ZERO_SHEAR + " not determined";
             default -> "";
         };

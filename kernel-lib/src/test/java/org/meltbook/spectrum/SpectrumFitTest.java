@@ -62,7 +62,7 @@ class SpectrumFitTest {
         SpectrumFit fit = SpectrumFit.of(made(1e-5, 1e3, 80));
         assertEquals(51063.7, fit.zeroShearViscosity().value(), 0.01 * 51063.7);
         assertEquals(1.15017e-3, fit.recoverableCompliance().value(), 0.03 * 1.15017e-3);
-        assertTrue(fit.headline().contains("terminal zone reached, η₀ = "), fit.headline());
+        assertTrue(fit.headline().contains("terminal zone reached; η₀ = "), fit.headline());
     }
 
     @Test

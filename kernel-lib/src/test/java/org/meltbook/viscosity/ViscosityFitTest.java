@@ -153,6 +153,16 @@ class ViscosityFitTest {
         assertTrue(fit.cautions().stream().anyMatch(c -> c.contains("9300 Pa·s") && c.contains("(extrapolated)")));
     }
 
+    /** The mean of level points lies above the truth every other time, the lowest of them hardly ever. */
+    @Test
+    void a_bound_lies_no_higher_than_any_point_of_the_low_end() {
+        Doubles rates = Doubles.of(0.01, 0.02, 0.03, 1, 10);
+        Doubles viscosities = Doubles.of(1020, 990, 1010, 500, 200);
+        Prediction bound =
+                ViscosityFit.of(curve(rates, viscosities), PowerLaw.FAMILY).zeroShearViscosity();
+        assertEquals(990, bound.low(), 1e-9);
+    }
+
     @Test
     void shows_no_limit_of_a_law_that_has_none_or_misses_the_points_or_carries_it() {
         Doubles rates = Doubles.logSpaced(1e-3, 1e3, 30);
