@@ -9,9 +9,9 @@ import org.meltbook.spectrum.RelaxationSpectrum;
 /**
  * A fluid with memory: what extra stress it carries in a homogeneous flow.
  *
- * <p>Contract: (1) immutable; (2) at low rates it tends to the linear viscoelasticity of its spectrum; (3) {@code stress}
- * gives the stress at a time in s after the whole history of the flow up to it, the rest or steady flow before its first
- * change included; (4) a flow that it cannot do, or that has no finite answer, throws with the reason.
+ * <p>Contract: (1) immutable; (2) at low rates it tends to the linear viscoelasticity of its spectrum; (3) {@code
+ * stress} gives the stress at a time in s after the whole history of the flow up to it, the rest or steady flow before
+ * its first change included; (4) a flow that it cannot do, or that has no finite answer, throws with the reason.
  */
 public interface ConstitutiveModel {
     /** What the model is called. */

@@ -12,8 +12,8 @@ import org.meltbook.units.Require;
 /**
  * The rubber-like liquid with damped memory: {@code τ(t) = ∫ m(t − t′) h(γ) C⁻¹ dt′} with the memory of a relaxation
  * spectrum, {@code m(s) = Σ (g/λ) exp(−s/λ)}, and the damping {@code h(γ) = exp(−n γ)} of the shear γ between t′ and t.
- * n = 0 is the rubber-like liquid itself. Simple shear that is steady or starts once is done by closed form; N₂ is zero.
- * Source: M. H. Wagner, Rheol. Acta 15 (1976) 136; n = 0.143 for the LDPE Melt I (memory).
+ * n = 0 is the rubber-like liquid itself. Simple shear that is steady or starts once is done by closed form; N₂ is
+ * zero. Source: M. H. Wagner, Rheol. Acta 15 (1976) 136; n = 0.143 for the LDPE Melt I (memory).
  *
  * @param spectrum moduli g in Pa and relaxation times λ in s
  * @param damping  n, no unit, zero or more
@@ -36,15 +36,20 @@ public record DampedIntegral(RelaxationSpectrum spectrum, double damping) implem
 
     @Override
     public List<String> limits() {
-        return List.of("the damping was measured in single steps of shear; on a reversal of the flow this form would let the "
-                + "network heal, which melts do not do, so reversals are refused");
+        return List.of(
+                "the damping n was measured in single steps of shear; on a reversal this form would let the network "
+                        + "heal, which melts do not do, so reversals are refused",
+                "n holds for shear only; extension needs a damping of its own",
+                "N₂ = 0 in this model; measured melts have a small negative one");
     }
 
     @Override
     public Stress stress(Flow flow, double time) {
         Require.finite("time", time, "s");
         double rate = shearRate(flow, time);
-        double since = flow.changes().isEmpty() ? Double.POSITIVE_INFINITY : Math.max(0, time - flow.changes().at(0));
+        double since = flow.changes().isEmpty()
+                ? Double.POSITIVE_INFINITY
+                : Math.max(0, time - flow.changes().at(0));
         double shear = 0;
         double normal = 0;
         for (RelaxationSpectrum.Mode mode : spectrum.modes()) {
@@ -68,13 +73,15 @@ public record DampedIntegral(RelaxationSpectrum spectrum, double damping) implem
     private static double shearRate(Flow flow, double time) {
         Doubles changes = flow.changes();
         boolean once = changes.isEmpty()
-                || changes.size() == 1 && flow.gradient(Math.nextDown(changes.at(0))).equals(VelocityGradient.REST);
+                || changes.size() == 1
+                        && flow.gradient(Math.nextDown(changes.at(0))).equals(VelocityGradient.REST);
         VelocityGradient gradient = flow.gradient(changes.isEmpty() ? time : changes.at(0));
         double rate = gradient.at(0, 1);
         if (once && rate >= 0 && gradient.equals(VelocityGradient.simpleShear(rate))) {
             return rate;
         }
-        throw new RangeException("the damped integral model has closed forms for simple shear that is steady or starts once "
-                + "from rest; found " + flow.name());
+        throw new RangeException(
+                "the damped integral model has closed forms for simple shear that is steady or starts once "
+                        + "from rest; found " + flow.name());
     }
 }

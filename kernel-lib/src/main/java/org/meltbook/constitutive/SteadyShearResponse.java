@@ -84,9 +84,15 @@ public record SteadyShearResponse(ConstitutiveModel model, Doubles rates, List<S
     @Override
     public String headline() {
         Doubles viscosity = viscosity();
+        double first = viscosity.at(0);
+        double last = viscosity.at(viscosity.size() - 1);
+        boolean level = viscosity.largest() - viscosity.smallest() <= 1e-9 * viscosity.largest();
         return "Steady shear of the " + model.name() + ", " + NumberText.of(rates.smallest()) + " to "
-                + NumberText.of(rates.largest()) + " 1/s: viscosity from " + NumberText.of(viscosity.at(0)) + " to "
-                + NumberText.of(viscosity.at(viscosity.size() - 1)) + " Pa·s, N₁ up to "
+                + NumberText.of(rates.largest()) + " 1/s: viscosity "
+                + (level
+                        ? NumberText.of(first) + " Pa·s at every rate"
+                        : "from " + NumberText.of(first) + " to " + NumberText.of(last) + " Pa·s")
+                + ", N₁ up to "
                 + NumberText.of(firstNormalStressDifference().largest()) + " Pa.";
     }
 
@@ -100,8 +106,8 @@ public record SteadyShearResponse(ConstitutiveModel model, Doubles rates, List<S
                 .numbers("N₂", "Pa", secondNormalStressDifference())
                 .numbers("η", "Pa·s", viscosity())
                 .numbers("Ψ₁", "Pa·s²", firstNormalStressCoefficient())
-                .note("Wi = γ̇ times the mean relaxation time, " + NumberText.of(model.spectrum().meanRelaxationTime())
-                        + " s.")
+                .note("Wi = γ̇ times the mean relaxation time, "
+                        + NumberText.of(model.spectrum().meanRelaxationTime()) + " s.")
                 .build());
     }
 

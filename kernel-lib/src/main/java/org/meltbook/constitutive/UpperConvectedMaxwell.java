@@ -21,13 +21,17 @@ import org.meltbook.units.Require;
  * {@code τ + λ τ^∇ = 2 g λ D} with the upper-convected derivative {@code τ^∇ = dτ/dt − L τ − τ Lᵀ}.
  * Source: R. B. Bird, R. C. Armstrong, O. Hassager, Dynamics of Polymeric Liquids, vol. 1, 2nd ed. 1987 (memory).
  *
- * <p>Under a constant velocity gradient the equation is linear in τ. Its matrix is made from the equation itself by letting
- * it act on one stress component after the other, only those that the symmetry of the flow allows; the steady state is the
- * solution of that linear system, a start-up its exact solution by the matrix exponential. No textbook result is typed in.
+ * <p>Under a constant velocity gradient the equation is linear in τ. Its matrix is made from the equation itself by
+ * letting it act on one stress component after the other, only those that the symmetry of the flow allows; the steady
+ * state is the solution of that linear system, a start-up its exact solution by the matrix exponential. No textbook
+ * result is typed in.
  *
  * @param spectrum moduli g in Pa and relaxation times λ in s
  */
 public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements ConstitutiveModel {
+    private static final double NORMAL_STRESS_LIMIT = 0.05;
+    private static final double VISCOSITY_LIMIT = 0.3;
+
     @Override
     public String name() {
         return "upper-convected Maxwell model";
@@ -40,8 +44,17 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
 
     @Override
     public List<String> limits() {
-        return List.of("in steady shear this model does not thin and its N₁ grows with the square of the rate without end; "
-                + "above Wi = 1 measured melts fall below both");
+        return List.of(
+                "in steady shear this model does not thin, and its N₁ grows with the square of the rate without end",
+                "melts depart from it early: N₁ from Wi ≈ " + NORMAL_STRESS_LIMIT + " on, here "
+                        + rate(NORMAL_STRESS_LIMIT) + " (12 % below the model), η from Wi ≈ " + VISCOSITY_LIMIT
+                        + " on, here " + rate(VISCOSITY_LIMIT)
+                        + " (7 % below); computed for LDPE Melt I with the damped integral model",
+                "N₂ = 0 in this model; measured melts have a small negative one");
+    }
+
+    private String rate(double weissenberg) {
+        return NumberText.of(weissenberg / spectrum.meanRelaxationTime(), 2) + " 1/s";
     }
 
     @Override
@@ -97,8 +110,8 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
                     if (row >= 0) {
                         matrix.setEntry(row, k, entry);
                     } else if (entry != 0) {
-                        throw new RangeException("the flow with " + gradient + " moves stress into component " + component
-                                + ", which its list " + components + " leaves out");
+                        throw new RangeException("the flow with " + gradient + " moves stress into component "
+                                + component + ", which its list " + components + " leaves out");
                     }
                 }
                 Component component = components.get(k);
@@ -195,7 +208,9 @@ public record UpperConvectedMaxwell(RelaxationSpectrum spectrum) implements Cons
                 return start;
             }
             double[] after = MatrixExponential.propagate(
-                            matrix.getSubMatrix(reached, reached), picked(drive, reached), picked(start, reached),
+                            matrix.getSubMatrix(reached, reached),
+                            picked(drive, reached),
+                            picked(start, reached),
                             duration / time)
                     .toArray();
             return spread(after, reached);

@@ -1,13 +1,14 @@
 package org.meltbook.fit;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import org.apache.commons.math3.linear.Array2DRowRealMatrix;
 import org.apache.commons.math3.linear.SingularValueDecomposition;
 
 /**
- * What the Jacobian at the end of a fit says about the parameters: which are fixed by the data, and how well. Worked out
- * on the inner scale (difference or logarithm) from the singular values of the Jacobian with columns of length one.
+ * What the Jacobian at the end of a fit says about the parameters: which are fixed by the data, and how well. Worked
+ * out on the inner scale (difference or logarithm) from the singular values of the Jacobian with columns of length one.
  */
 final class Covariance {
     /** Below this share of the largest singular value a combination of parameters counts as not fixed by the data. */
@@ -30,7 +31,7 @@ final class Covariance {
         this.loose = new boolean[count];
         this.matrix = new double[count][count];
         for (double[] row : matrix) {
-            java.util.Arrays.fill(row, Double.NaN);
+            Arrays.fill(row, Double.NaN);
         }
     }
 

@@ -41,11 +41,11 @@ public record Estimate(Parameter parameter, double value, double error, double l
     /** Value ± standard error with unit, or the value and why it has no error. */
     @Override
     public String toString() {
-        String number = switch (status) {
-            case HELD -> NumberText.of(value) + (parameter.unit().equals("1") ? "" : " " + parameter.unit());
-            default -> NumberText.of(value, error, parameter.unit());
-        };
-        return parameter.label() + " = " + number
-                + (status == Status.ESTIMATED ? "" : " (" + status.words() + ")");
+        String number =
+                switch (status) {
+                    case HELD -> NumberText.of(value) + (parameter.unit().equals("1") ? "" : " " + parameter.unit());
+                    default -> NumberText.of(value, error, parameter.unit());
+                };
+        return parameter.label() + " = " + number + (status == Status.ESTIMATED ? "" : " (" + status.words() + ")");
     }
 }

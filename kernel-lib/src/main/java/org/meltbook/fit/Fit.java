@@ -15,8 +15,8 @@ import org.meltbook.figure.Figure;
  * What came of a fit: estimates with standard errors and 95 % intervals, covariance, residuals, and how it ended.
  *
  * <p>Standard errors come from the Jacobian at the optimum, scaled by the residual variance: the scatter of the points
- * around the model tells their error, so a model that does not fit widens its own errors. Intervals use Student's t; for a
- * parameter on a logarithmic scale they are symmetric in its logarithm, so that it stays above zero.
+ * around the model tells their error, so a model that does not fit widens its own errors. Intervals use Student's t;
+ * for a parameter on a logarithmic scale they are symmetric in its logarithm, so that it stays above zero.
  */
 public final class Fit implements Exhibit {
     /** How a fit ended. */
@@ -57,7 +57,9 @@ public final class Fit implements Exhibit {
 
     private List<Estimate> estimates(double[] at) {
         List<Estimate> all = new ArrayList<>();
-        double t = degreesOfFreedom > 0 ? new TDistribution(degreesOfFreedom).inverseCumulativeProbability(0.975) : Double.NaN;
+        double t = degreesOfFreedom > 0
+                ? new TDistribution(degreesOfFreedom).inverseCumulativeProbability(0.975)
+                : Double.NaN;
         for (int i = 0; i < at.length; i++) {
             Parameter parameter = problem.model().parameters().get(i);
             double inner = Math.sqrt(covariance.at(i, i) * reducedChiSquare());
@@ -116,8 +118,10 @@ public final class Fit implements Exhibit {
         int a = place(first);
         int b = place(second);
         List<Parameter> parameters = problem.model().parameters();
-        return covariance.at(a, b) * reducedChiSquare()
-                * parameters.get(a).stretch(values.at(a)) * parameters.get(b).stretch(values.at(b));
+        return covariance.at(a, b)
+                * reducedChiSquare()
+                * parameters.get(a).stretch(values.at(a))
+                * parameters.get(b).stretch(values.at(b));
     }
 
     /** Correlation of two parameters on the scales on which they were stepped, −1 to 1; NaN if the data give none. */
@@ -128,7 +132,8 @@ public final class Fit implements Exhibit {
     }
 
     private int place(String name) {
-        List<String> names = problem.model().parameters().stream().map(Parameter::name).toList();
+        List<String> names =
+                problem.model().parameters().stream().map(Parameter::name).toList();
         if (!names.contains(name)) {
             throw new RangeException(problem.model().name() + " has no parameter " + name + "; it has " + names);
         }
@@ -195,8 +200,12 @@ public final class Fit implements Exhibit {
 
     private Rows parameterRows() {
         return Rows.titled("Parameters of " + problem.model().name())
-                .text("parameter", estimates.stream().map(e -> e.parameter().label()).toList())
-                .text("value ± standard error", estimates.stream().map(Fit::number).toList())
+                .text(
+                        "parameter",
+                        estimates.stream().map(e -> e.parameter().label()).toList())
+                .text(
+                        "value ± standard error",
+                        estimates.stream().map(Fit::number).toList())
                 .text("95 % interval", estimates.stream().map(Fit::interval).toList())
                 .text("unit", estimates.stream().map(e -> e.parameter().unit()).toList())
                 .text("status", estimates.stream().map(e -> e.status().words()).toList())
@@ -224,7 +233,10 @@ public final class Fit implements Exhibit {
                 .numbers(problem.xAxis().label(), problem.xAxis().unit(), problem.x())
                 .numbers("measured", problem.yAxis().unit(), problem.y())
                 .numbers("model", problem.yAxis().unit(), problem.x().map(this::at))
-                .numbers(relative ? "model / measured − 1" : "residual / deviation", relative ? "%" : "1", shownResiduals())
+                .numbers(
+                        relative ? "model / measured − 1" : "residual / deviation",
+                        relative ? "%" : "1",
+                        shownResiduals())
                 .build();
     }
 
@@ -282,13 +294,14 @@ public final class Fit implements Exhibit {
     public List<String> cautions() {
         List<String> all = new ArrayList<>();
         if (status != Status.CONVERGED) {
-            all.add("the fit stopped after " + evaluations + " trials without converging: its values are the best so far");
+            all.add("the fit stopped after " + evaluations
+                    + " trials without converging: its values are the best so far");
         }
         all.addAll(covariance.problems());
         estimates.stream()
                 .filter(e -> e.status() == Estimate.Status.WEAK)
-                .forEach(e -> all.add(e.parameter().label() + " is weakly determined: its 95 % interval spans more than "
-                        + "a factor of 100"));
+                .forEach(e -> all.add(e.parameter().label()
+                        + " is weakly determined: its 95 % interval spans more than " + "a factor of 100"));
         if (degreesOfFreedom <= 0) {
             all.add("as many parameters as points: nothing is left to judge the errors by");
         }

@@ -8,17 +8,19 @@ import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 
 /**
- * Nonlinear least squares by damped Gauss–Newton steps. Bounds hold at every trial: a step that would leave them ends on
- * them, and a parameter that rests on a bound stays there while the sum of squares would only fall outside. Parameters
- * on a logarithmic scale are stepped in their logarithm. Where the model has no value the step is shortened.
+ * Nonlinear least squares by damped Gauss–Newton steps. Bounds hold at every trial: a step that would leave them ends
+ * on them, and a parameter that rests on a bound stays there while the sum of squares would only fall outside.
+ * Parameters on a logarithmic scale are stepped in their logarithm. Where the model has no value the step is shortened.
  *
- * <p>Each step is the QR solution of the Jacobian with the damping appended (no normal equations); columns are scaled by
- * their largest length so far. Damping follows H. B. Nielsen, report IMM-REP-1999-05, Technical University of Denmark
- * (from memory). Commons Math's optimiser knows neither bounds nor interrupts, hence this one; a test holds both together.
+ * <p>Each step is the QR solution of the Jacobian with the damping appended (no normal equations); columns are scaled
+ * by their largest length so far. Damping follows H. B. Nielsen, report IMM-REP-1999-05, Technical University of
+ * Denmark (from memory). Commons Math's optimiser knows neither bounds nor interrupts, hence this one; a test holds
+ * both together.
  */
 final class LevenbergMarquardt {
     private static final int MOST_EVALUATIONS = 2000;
     private static final double SMALL = 1e-14;
+    private static final double LEAST_DAMPING = 1e-16;
 
     private final Problem problem;
     private final Progress progress;
@@ -84,7 +86,7 @@ final class LevenbergMarquardt {
                 continue;
             }
             double quality = 2 * gained / predicted - 1;
-            damping *= Math.max(1.0 / 3, 1 - quality * quality * quality);
+            damping = Math.max(LEAST_DAMPING, damping * Math.max(1.0 / 3, 1 - quality * quality * quality));
             growth = 2;
             Linear there = linear(trial);
             if (!Double.isFinite(there.cost())) {

@@ -5,9 +5,9 @@ import java.util.List;
 /**
  * A function of one variable with parameters, as a fit sees it.
  *
- * <p>Contract: (1) {@code parameters} always gives the same list, names unique; (2) {@code at} and {@code gradient} take
- * the parameters in that order, held ones included; (3) both depend on their arguments alone, keep none of them and
- * change nothing but {@code into}; (4) where the function has no value they give NaN: the fit then steps back.
+ * <p>Contract: (1) {@code parameters} always gives the same list, names unique; (2) {@code at} and {@code gradient}
+ * take the parameters in that order, held ones included; (3) both depend on their arguments alone, keep none of them
+ * and change nothing but {@code into}; (4) where the function has no value they give NaN: the fit then steps back.
  */
 public interface Model {
     /** What the model is called. */

@@ -47,7 +47,13 @@ public record Parameter(
 
     /** A free parameter that may take any value, stepped by differences. */
     public static Parameter unbounded(String name, String unit) {
-        return new Parameter(name, name, unit, Double.NEGATIVE_INFINITY, Double.POSITIVE_INFINITY, Scale.LINEAR,
+        return new Parameter(
+                name,
+                name,
+                unit,
+                Double.NEGATIVE_INFINITY,
+                Double.POSITIVE_INFINITY,
+                Scale.LINEAR,
                 OptionalDouble.empty());
     }
 

@@ -14,9 +14,17 @@ public final class PredictionRows {
         return Rows.titled(title)
                 .text("number", predictions.stream().map(Prediction::name).toList())
                 .text("value", predictions.stream().map(PredictionRows::value).toList())
-                .text("95 % interval", predictions.stream().map(PredictionRows::interval).toList())
-                .text("unit", predictions.stream().map(p -> p.quantity().siUnit()).toList())
-                .text("to mind", predictions.stream().map(p -> String.join("; ", p.cautions())).toList())
+                .text(
+                        "95 % interval",
+                        predictions.stream().map(PredictionRows::interval).toList())
+                .text(
+                        "unit",
+                        predictions.stream().map(p -> p.quantity().siUnit()).toList())
+                .text(
+                        "to mind",
+                        predictions.stream()
+                                .map(p -> String.join("; ", p.cautions()))
+                                .toList())
                 .build();
     }
 

@@ -3,6 +3,7 @@ package org.meltbook.fit;
 import java.util.HashSet;
 import java.util.List;
 import java.util.Set;
+import java.util.stream.IntStream;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
@@ -91,7 +92,7 @@ public final class Problem {
 
     /** Places of the free parameters. */
     int[] free() {
-        return java.util.stream.IntStream.range(0, model.parameters().size())
+        return IntStream.range(0, model.parameters().size())
                 .filter(i -> model.parameters().get(i).isFree())
                 .toArray();
     }
@@ -151,7 +152,9 @@ public final class Problem {
             double[] start = new double[values.length];
             for (int i = 0; i < start.length; i++) {
                 Parameter parameter = parameters.get(i);
-                start[i] = parameter.isFree() ? parameter.check(values[i]) : parameter.fixed().getAsDouble();
+                start[i] = parameter.isFree()
+                        ? parameter.check(values[i])
+                        : parameter.fixed().getAsDouble();
             }
             Problem problem = new Problem(this, Doubles.of(start));
             long distinct = x.stream().distinct().count();
@@ -166,8 +169,8 @@ public final class Problem {
 
         private void checkParameters(List<Parameter> parameters, double[] values) {
             if (values.length != parameters.size()) {
-                throw new RangeException(model.name() + " has " + parameters.size() + " parameters, the start gives "
-                        + values.length);
+                throw new RangeException(
+                        model.name() + " has " + parameters.size() + " parameters, the start gives " + values.length);
             }
             Set<String> names = new HashSet<>();
             for (Parameter parameter : parameters) {
@@ -192,7 +195,8 @@ public final class Problem {
                 }
             }
             if (weighting == Weighting.DEVIATIONS
-                    && (deviations.size() != y.size() || !deviations.stream().allMatch(d -> d > 0 && d < Double.MAX_VALUE))) {
+                    && (deviations.size() != y.size()
+                            || !deviations.stream().allMatch(d -> d > 0 && d < Double.MAX_VALUE))) {
                 throw new RangeException("a fit needs one standard deviation above zero for each of its " + y.size()
                         + " points, found " + deviations);
             }

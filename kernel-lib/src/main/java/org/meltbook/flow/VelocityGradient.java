@@ -22,8 +22,8 @@ public final class VelocityGradient {
     /**
      * The gradient with the nine entries in 1/s, row by row.
      *
-     * @throws RangeException if there are not nine, one is not finite, or the volume is not kept (the sum of the diagonal
-     *     is not zero to rounding)
+     * @throws RangeException if there are not nine, one is not finite, or the volume is not kept (the sum of the
+     *     diagonal is not zero to rounding)
      */
     public static VelocityGradient of(double... entries) {
         double largest = 0;
@@ -32,8 +32,9 @@ public final class VelocityGradient {
         }
         boolean sound = entries.length == 9 && largest < Double.POSITIVE_INFINITY;
         if (!sound || !(Math.abs(entries[0] + entries[4] + entries[8]) <= 1e-12 * largest)) {
-            throw new RangeException("a velocity gradient needs nine finite entries whose diagonal adds up to zero, found "
-                    + Doubles.of(entries));
+            throw new RangeException(
+                    "a velocity gradient needs nine finite entries whose diagonal adds up to zero, found "
+                            + Doubles.of(entries));
         }
         return new VelocityGradient(Doubles.of(entries));
     }

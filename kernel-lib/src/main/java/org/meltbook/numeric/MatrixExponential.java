@@ -1,5 +1,6 @@
 package org.meltbook.numeric;
 
+import java.util.Arrays;
 import org.apache.commons.math3.linear.LUDecomposition;
 import org.apache.commons.math3.linear.MatrixUtils;
 import org.apache.commons.math3.linear.RealMatrix;
@@ -15,8 +16,20 @@ import org.meltbook.base.RangeException;
  */
 public final class MatrixExponential {
     private static final double[] PADE = {
-        64764752532480000.0, 32382376266240000.0, 7771770303897600.0, 1187353796428800.0, 129060195264000.0,
-        10559470521600.0, 670442572800.0, 33522128640.0, 1323241920.0, 40840800.0, 960960.0, 16380.0, 182.0, 1.0
+        64764752532480000.0,
+        32382376266240000.0,
+        7771770303897600.0,
+        1187353796428800.0,
+        129060195264000.0,
+        10559470521600.0,
+        670442572800.0,
+        33522128640.0,
+        1323241920.0,
+        40840800.0,
+        960960.0,
+        16380.0,
+        182.0,
+        1.0
     };
     private static final double BOUND = 5.371920351148152;
 
@@ -53,11 +66,11 @@ public final class MatrixExponential {
         int n = b.length;
         RealMatrix augmented = MatrixUtils.createRealMatrix(n + 1, n + 1);
         augmented.setSubMatrix(a.getData(), 0, 0);
-        augmented.setColumn(n, java.util.Arrays.copyOf(b, n + 1));
+        augmented.setColumn(n, Arrays.copyOf(b, n + 1));
         RealMatrix flow = of(augmented.scalarMultiply(time));
-        double[] state = java.util.Arrays.copyOf(start, n + 1);
+        double[] state = Arrays.copyOf(start, n + 1);
         state[n] = 1;
-        return Doubles.of(java.util.Arrays.copyOf(flow.operate(state), n));
+        return Doubles.of(Arrays.copyOf(flow.operate(state), n));
     }
 
     private static RealMatrix pade(RealMatrix a) {

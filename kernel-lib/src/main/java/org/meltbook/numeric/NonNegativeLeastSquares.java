@@ -1,6 +1,7 @@
 package org.meltbook.numeric;
 
 import java.util.Arrays;
+import java.util.stream.IntStream;
 import org.apache.commons.math3.linear.Array2DRowRealMatrix;
 import org.apache.commons.math3.linear.ArrayRealVector;
 import org.apache.commons.math3.linear.QRDecomposition;
@@ -12,10 +13,11 @@ import org.meltbook.base.RangeException;
 /**
  * Least squares with unknowns that may not be negative: minimises |A x − b| over x ≥ 0.
  *
- * <p>Active-set method of C. L. Lawson and R. J. Hanson, Solving Least Squares Problems, 1974, chapter 23 (from memory).
- * Each trial set of free unknowns is solved by Householder QR of its own columns, never by the normal equations, so that
- * the conditioning is that of A. At the optimum the gradient w = Aᵀ(b − A x) is zero for free unknowns and not positive
- * for those held at zero.
+ * <p>Active-set method of C. L. Lawson and R. J. Hanson, Solving Least Squares Problems, 1974, chapter 23 (from
+ * memory). Each trial set of free unknowns is solved by Householder QR of its own columns, never by the normal
+ * equations, so that the conditioning is that of A. At the optimum the gradient w = Aᵀ(b − A x) is zero for free
+ * unknowns and not positive for those held at zero. With many more rows than columns A and b are first brought to the
+ * triangle of one QR, which leaves all lengths and angles as they are and makes each trial cheaper.
  */
 public final class NonNegativeLeastSquares {
     private static final double EPSILON = Math.ulp(1.0);
@@ -64,7 +66,31 @@ public final class NonNegativeLeastSquares {
      */
     public static Solution solve(double[][] matrix, double[] target, Progress progress) {
         check(matrix, target);
-        return new NonNegativeLeastSquares(matrix, target).run(progress);
+        int columns = matrix[0].length;
+        if (matrix.length <= columns + 1) {
+            return new NonNegativeLeastSquares(matrix, target).run(progress);
+        }
+        double[][] triangle = triangle(matrix, target);
+        double[] last = new double[columns + 1];
+        for (int i = 0; i <= columns; i++) {
+            last[i] = triangle[i][columns];
+            triangle[i] = Arrays.copyOf(triangle[i], columns);
+        }
+        return new NonNegativeLeastSquares(triangle, last).run(progress);
+    }
+
+    /** The triangle R of the QR decomposition of [A b]: one row and column more than A has columns. */
+    private static double[][] triangle(double[][] matrix, double[] target) {
+        int columns = matrix[0].length;
+        double[][] both = new double[matrix.length][];
+        for (int i = 0; i < both.length; i++) {
+            both[i] = Arrays.copyOf(matrix[i], columns + 1);
+            both[i][columns] = target[i];
+        }
+        return new QRDecomposition(new Array2DRowRealMatrix(both, false))
+                .getR()
+                .getSubMatrix(0, columns, 0, columns)
+                .getData();
     }
 
     private static void check(double[][] matrix, double[] target) {
@@ -74,11 +100,12 @@ public final class NonNegativeLeastSquares {
         }
         for (int i = 0; i < matrix.length; i++) {
             if (matrix[i].length != matrix[0].length) {
-                throw new RangeException("row " + i + " has " + matrix[i].length + " columns, row 0 has "
-                        + matrix[0].length);
+                throw new RangeException(
+                        "row " + i + " has " + matrix[i].length + " columns, row 0 has " + matrix[0].length);
             }
             if (!Double.isFinite(target[i]) || !Arrays.stream(matrix[i]).allMatch(Double::isFinite)) {
-                throw new RangeException("row " + i + " of the least squares problem holds a number that is not finite");
+                throw new RangeException(
+                        "row " + i + " of the least squares problem holds a number that is not finite");
             }
         }
     }
@@ -118,7 +145,9 @@ public final class NonNegativeLeastSquares {
         return best;
     }
 
-    /** Solves for the free unknowns, holding at zero those that would turn negative; false if the new one was refused. */
+    /**
+     * Solves for the free unknowns, holding at zero those that would turn negative; false if the new one was refused.
+     */
     private boolean settle(int entering) {
         boolean first = true;
         while (true) {
@@ -152,7 +181,7 @@ public final class NonNegativeLeastSquares {
 
     /** Least squares over the free columns, zero elsewhere; all zero if the columns depend on each other. */
     private double[] solveFree() {
-        int[] chosen = java.util.stream.IntStream.range(0, x.length).filter(j -> free[j]).toArray();
+        int[] chosen = IntStream.range(0, x.length).filter(j -> free[j]).toArray();
         double[] trial = new double[x.length];
         if (chosen.length > target.length) {
             return trial;

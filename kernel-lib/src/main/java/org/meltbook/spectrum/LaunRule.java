@@ -3,9 +3,9 @@ package org.meltbook.spectrum;
 import org.meltbook.units.Require;
 
 /**
- * An estimate of the first normal stress difference in steady shear from the moduli at the angular frequency equal to the
- * shear rate, {@code N₁(γ̇) = 2 G′ [1 + (G′/G″)²]^0.7 at ω = γ̇}. An empirical rule for melts, exact at low rates. Source:
- * H. M. Laun, J. Rheol. 30 (1986) 459 (exponent from memory).
+ * An estimate of the first normal stress difference in steady shear from the moduli at the angular frequency equal to
+ * the shear rate, {@code N₁(γ̇) = 2 G′ [1 + (G′/G″)²]^0.7 at ω = γ̇}. An empirical rule for melts, exact at low rates.
+ * Source: H. M. Laun, J. Rheol. 30 (1986) 459 (exponent from memory).
  */
 public final class LaunRule {
     private static final double EXPONENT = 0.7;

@@ -14,9 +14,9 @@ import org.meltbook.units.Quantity;
 import org.meltbook.units.Require;
 
 /**
- * The exponent with which the zero-shear viscosity grows with molar mass between two samples of one kind. Well entangled
- * linear melts of narrow distribution have about 3.4 (common knowledge; from memory: J. D. Ferry, Viscoelastic Properties
- * of Polymers, 3rd ed. 1980).
+ * The exponent with which the zero-shear viscosity grows with molar mass between two samples of one kind. Well
+ * entangled linear melts of narrow distribution have about 3.4 (common knowledge; from memory: J. D. Ferry,
+ * Viscoelastic Properties of Polymers, 3rd ed. 1980).
  */
 public final class MassScaling implements Exhibit {
     private static final double USUAL = 3.4;
@@ -46,8 +46,8 @@ public final class MassScaling implements Exhibit {
         Require.positive("molar mass", lightMass, "kg/mol");
         Require.positive("molar mass", heavyMass, "kg/mol");
         if (!(heavyMass > lightMass)) {
-            throw new RangeException("a scaling needs two different molar masses, the lighter one first, found " + lightMass
-                    + " and " + heavyMass + " kg/mol");
+            throw new RangeException("a scaling needs two different molar masses, the lighter one first, found "
+                    + lightMass + " and " + heavyMass + " kg/mol");
         }
         Require.positive(light.name(), light.value(), light.quantity().siUnit());
         Require.positive(heavy.name(), heavy.value(), heavy.quantity().siUnit());
@@ -69,7 +69,8 @@ public final class MassScaling implements Exhibit {
         String interval = Double.isNaN(exponent.low())
                 ? ""
                 : " (95 %: " + NumberText.of(exponent.low(), 3) + " to " + NumberText.of(exponent.high(), 3) + ")";
-        return "Zero-shear viscosity grows with molar mass to the power " + NumberText.of(exponent.value(), 3) + interval
+        return "Zero-shear viscosity grows with molar mass to the power " + NumberText.of(exponent.value(), 3)
+                + interval
                 + " between " + NumberText.of(lightMass, 3) + " and " + NumberText.of(heavyMass, 3)
                 + " kg/mol; well entangled linear melts have about " + NumberText.of(USUAL, 2) + ".";
     }
@@ -92,7 +93,10 @@ public final class MassScaling implements Exhibit {
         return List.of(Figure.titled("Zero-shear viscosity over molar mass")
                 .x(Quantity.MOLAR_MASS)
                 .y(new Axis("zero-shear viscosity η₀", "Pa·s", Axis.Scale.LOG))
-                .line("slope " + NumberText.of(USUAL, 2), masses, masses.map(m -> middle * Math.pow(m / middleMass, USUAL)))
+                .line(
+                        "slope " + NumberText.of(USUAL, 2),
+                        masses,
+                        masses.map(m -> middle * Math.pow(m / middleMass, USUAL)))
                 .marks(
                         "η₀ of the samples",
                         Doubles.of(lightMass, heavyMass),
@@ -104,8 +108,9 @@ public final class MassScaling implements Exhibit {
 
     @Override
     public List<String> cautions() {
-        List<String> all = new ArrayList<>(light.cautions());
-        all.addAll(heavy.cautions());
+        List<String> all = new ArrayList<>();
+        light.cautions().forEach(caution -> all.add(NumberText.of(lightMass, 3) + " kg/mol: " + caution));
+        heavy.cautions().forEach(caution -> all.add(NumberText.of(heavyMass, 3) + " kg/mol: " + caution));
         all.add("two samples give a slope, not a law");
         return List.copyOf(all);
     }

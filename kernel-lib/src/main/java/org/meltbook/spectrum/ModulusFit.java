@@ -1,18 +1,18 @@
 package org.meltbook.spectrum;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Random;
 import org.meltbook.base.Doubles;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 import org.meltbook.measure.Curve;
 import org.meltbook.numeric.NonNegativeLeastSquares;
 
 /**
- * Non-negative moduli on a fixed grid of relaxation times that come nearest to measured moduli in relative terms. Storage
- * and loss points keep their own frequencies; either curve may be left out.
+ * Non-negative moduli on a fixed grid of relaxation times that come nearest to measured moduli in relative terms.
+ * Storage and loss points keep their own frequencies; either curve may be left out.
  */
 final class ModulusFit {
     private final Doubles times;
@@ -26,7 +26,7 @@ final class ModulusFit {
         this.matrix = matrix;
         this.storagePoints = storagePoints;
         double[] ones = new double[matrix.length];
-        java.util.Arrays.fill(ones, 1);
+        Arrays.fill(ones, 1);
         double[] moduli = solve(ones, progress);
         this.spectrum = spectrum(moduli);
         this.residuals = new double[matrix.length];
@@ -57,7 +57,8 @@ final class ModulusFit {
         for (int i = 0; i < curve.size(); i++) {
             double frequency = curve.x().at(i);
             double measured = curve.y().at(i);
-            rows.add(times.map(time -> RelaxationSpectrum.storageShare(frequency * time) / measured).toArray());
+            rows.add(times.map(time -> RelaxationSpectrum.storageShare(frequency * time) / measured)
+                    .toArray());
         }
         return rows;
     }
@@ -67,7 +68,8 @@ final class ModulusFit {
         for (int i = 0; i < curve.size(); i++) {
             double frequency = curve.x().at(i);
             double measured = curve.y().at(i);
-            rows.add(times.map(time -> RelaxationSpectrum.lossShare(frequency * time) / measured).toArray());
+            rows.add(times.map(time -> RelaxationSpectrum.lossShare(frequency * time) / measured)
+                    .toArray());
         }
         return rows;
     }
@@ -75,8 +77,9 @@ final class ModulusFit {
     private double[] solve(double[] target, Progress progress) {
         NonNegativeLeastSquares.Solution solution = NonNegativeLeastSquares.solve(matrix, target, progress);
         if (!solution.converged()) {
-            throw new RangeException("the spectrum on a grid of " + times.size() + " relaxation times did not settle within "
-                    + solution.steps() + " steps; ask for fewer modes a decade");
+            throw new RangeException(
+                    "the spectrum on a grid of " + times.size() + " relaxation times did not settle within "
+                            + solution.steps() + " steps; ask for fewer modes a decade");
         }
         return solution.unknowns().toArray();
     }
@@ -110,11 +113,17 @@ final class ModulusFit {
 
     /** Root mean square of the relative residuals. */
     double rootMeanSquare() {
-        double sum = 0;
-        for (double residual : residuals) {
-            sum += residual * residual;
-        }
-        return Math.sqrt(sum / residuals.length);
+        return Math.sqrt(sumOfSquares() / residuals.length);
+    }
+
+    /** Sum of the squared relative residuals. */
+    double sumOfSquares() {
+        return Arrays.stream(residuals).map(r -> r * r).sum();
+    }
+
+    /** Points less modes, one at least. */
+    int spare() {
+        return Math.max(1, residuals.length - spectrum.modes().size());
     }
 
     /**
@@ -123,8 +132,7 @@ final class ModulusFit {
      */
     List<RelaxationSpectrum> replicates(int count, long seed, Progress progress) {
         Random random = new Random(seed);
-        double spare = Math.max(1, residuals.length - spectrum.modes().size());
-        double widened = Math.sqrt(residuals.length / spare);
+        double widened = Math.sqrt((double) residuals.length / spare());
         List<RelaxationSpectrum> all = new ArrayList<>();
         for (int k = 0; k < count; k++) {
             progress.at(k, count, "spectra for the intervals");
@@ -139,21 +147,5 @@ final class ModulusFit {
             all.add(spectrum(solve(target, progress)));
         }
         return all;
-    }
-
-    /** Refuses points that are no moduli at a frequency. */
-    static Curve checked(Curve curve) {
-        String what = curve.y().quantity().label();
-        if (curve.size() < 3) {
-            throw new RangeException("a spectrum needs three usable points of the " + what + " at least, found " + curve.size());
-        }
-        for (int i = 0; i < curve.size(); i++) {
-            if (!(curve.x().at(i) > 0 && curve.y().at(i) > 0)) {
-                throw new RangeException("usable point " + (i + 1) + " of the " + what + " is "
-                        + NumberText.of(curve.y().at(i)) + " Pa at " + NumberText.of(curve.x().at(i))
-                        + " rad/s: a spectrum needs both above zero; mark the row unusable to set it aside");
-            }
-        }
-        return curve;
     }
 }

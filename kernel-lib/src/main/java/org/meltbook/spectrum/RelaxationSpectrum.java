@@ -54,11 +54,12 @@ public final class RelaxationSpectrum implements Exhibit {
         if (modes.isEmpty()) {
             throw new RangeException("a relaxation spectrum needs one mode at least, found none");
         }
-        List<Mode> rising = modes.stream().sorted(Comparator.comparingDouble(Mode::time)).toList();
+        List<Mode> rising =
+                modes.stream().sorted(Comparator.comparingDouble(Mode::time)).toList();
         for (int i = 1; i < rising.size(); i++) {
             if (rising.get(i).time() == rising.get(i - 1).time()) {
-                throw new RangeException("two modes of the spectrum have the relaxation time " + rising.get(i).time()
-                        + " s: add their moduli");
+                throw new RangeException("two modes of the spectrum have the relaxation time "
+                        + rising.get(i).time() + " s: add their moduli");
             }
         }
         return new RelaxationSpectrum(rising);
@@ -72,8 +73,8 @@ public final class RelaxationSpectrum implements Exhibit {
      */
     public static RelaxationSpectrum of(Doubles moduli, Doubles times) {
         if (moduli.size() != times.size()) {
-            throw new RangeException("a spectrum needs as many moduli as relaxation times, found " + moduli.size() + " and "
-                    + times.size());
+            throw new RangeException("a spectrum needs as many moduli as relaxation times, found " + moduli.size()
+                    + " and " + times.size());
         }
         List<Mode> modes = new ArrayList<>();
         for (int i = 0; i < moduli.size(); i++) {
@@ -185,7 +186,9 @@ public final class RelaxationSpectrum implements Exhibit {
     public String headline() {
         return "Relaxation spectrum of " + modes.size() + (modes.size() == 1 ? " mode at " : " modes from ")
                 + NumberText.of(modes.get(0).time())
-                + (modes.size() == 1 ? "" : " to " + NumberText.of(modes.get(modes.size() - 1).time())) + " s: η₀ = "
+                + (modes.size() == 1
+                        ? ""
+                        : " to " + NumberText.of(modes.get(modes.size() - 1).time())) + " s: η₀ = "
                 + NumberText.of(zeroShearViscosity()) + " Pa·s, mean relaxation time "
                 + NumberText.of(meanRelaxationTime()) + " s.";
     }
@@ -193,12 +196,24 @@ public final class RelaxationSpectrum implements Exhibit {
     @Override
     public List<Rows> rows() {
         Rows sums = Rows.titled("Sums over the modes")
-                .text("number", List.of("zero-shear viscosity η₀ = Σ g λ", "recoverable compliance Jₑ⁰ = Σ g λ² / η₀²",
-                        "first normal stress coefficient Ψ₁,₀ = 2 Σ g λ²", "mean relaxation time Σ g λ² / Σ g λ",
-                        "modulus at time zero G(0) = Σ g"))
-                .numbers("value", "", zeroShearViscosity(), recoverableCompliance(), zeroRateNormalStressCoefficient(),
-                        meanRelaxationTime(), instantaneousModulus())
+                .text(
+                        "number",
+                        List.of(
+                                "zero-shear viscosity η₀ = Σ g λ",
+                                "recoverable compliance Jₑ⁰ = Σ g λ² / η₀²",
+                                "first normal stress coefficient Ψ₁,₀ = 2 Σ g λ²",
+                                "mean relaxation time Σ g λ² / Σ g λ",
+                                "modulus at time zero G(0) = Σ g"))
+                .numbers(
+                        "value",
+                        "",
+                        zeroShearViscosity(),
+                        recoverableCompliance(),
+                        zeroRateNormalStressCoefficient(),
+                        meanRelaxationTime(),
+                        instantaneousModulus())
                 .text("unit", List.of("Pa·s", "1/Pa", "Pa·s²", "s", "Pa"))
+                .note("Of a fitted spectrum these hold as far as the sweep reached: see what its fit says of them.")
                 .build();
         return List.of(modeRows().build(), sums);
     }
@@ -208,8 +223,16 @@ public final class RelaxationSpectrum implements Exhibit {
         return Rows.titled("Modes")
                 .numbers("λ", "s", times())
                 .numbers("g", "Pa", moduli())
-                .numbers("g λ", "Pa·s", Doubles.of(modes.stream().mapToDouble(Mode::viscosity).toArray()))
-                .numbers("share of η₀", "%", Doubles.of(modes.stream().mapToDouble(m -> 100 * m.viscosity() / all).toArray()));
+                .numbers(
+                        "g λ",
+                        "Pa·s",
+                        Doubles.of(modes.stream().mapToDouble(Mode::viscosity).toArray()))
+                .numbers(
+                        "share of η₀",
+                        "%",
+                        Doubles.of(modes.stream()
+                                .mapToDouble(m -> 100 * m.viscosity() / all)
+                                .toArray()));
     }
 
     @Override

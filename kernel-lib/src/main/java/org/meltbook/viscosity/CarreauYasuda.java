@@ -6,10 +6,10 @@ import org.meltbook.fit.Parameter.Scale;
 import org.meltbook.units.Require;
 
 /**
- * The Carreau–Yasuda law, {@code η = η∞ + (η₀ − η∞) [1 + (λ γ̇)^a]^((n−1)/a)}; a = 2 is the Carreau law. Melts are hardly
- * ever measured down to η∞, so fits hold it at zero unless it is freed: {@code CarreauYasuda.FAMILY.freeing("etaInf")}.
- * Sources: P. J. Carreau, Trans. Soc. Rheol. 16 (1972) 99; K. Yasuda, R. C. Armstrong, R. E. Cohen, Rheol. Acta 20 (1981)
- * 163 (memory).
+ * The Carreau–Yasuda law, {@code η = η∞ + (η₀ − η∞) [1 + (λ γ̇)^a]^((n−1)/a)}; a = 2 is the Carreau law. Melts are
+ * hardly ever measured down to η∞, so fits hold it at zero unless it is freed: {@code
+ * CarreauYasuda.FAMILY.freeing("etaInf")}. Sources: P. J. Carreau, Trans. Soc. Rheol. 16 (1972) 99; K. Yasuda, R. C.
+ * Armstrong, R. E. Cohen, Rheol. Acta 20 (1981) 163 (memory).
  *
  * @param eta0   zero-shear viscosity in Pa·s, above zero
  * @param lambda time constant in s, above zero
@@ -26,7 +26,8 @@ public record CarreauYasuda(double eta0, double lambda, double a, double n, doub
             .parameter(Parameter.positive("eta0", "zero-shear viscosity η₀", "Pa·s"))
             .parameter(Parameter.positive("lambda", "time constant λ", "s"))
             .parameter(Parameter.positive("a", "breadth of the bend a", "1").within(0.05, 50))
-            .parameter(Parameter.positive("n", "exponent n", "1").on(Scale.LINEAR).within(0, 1))
+            .parameter(
+                    Parameter.positive("n", "exponent n", "1").on(Scale.LINEAR).within(0, 1))
             .parameter(Parameter.positive("etaInf", "infinite-rate viscosity η∞", "Pa·s")
                     .on(Scale.LINEAR)
                     .heldAt(0))

@@ -6,8 +6,8 @@ import org.meltbook.fit.Parameter.Scale;
 import org.meltbook.units.Require;
 
 /**
- * The Cross law without a lower plateau, {@code η = η₀ / (1 + (λ γ̇)^m)}: η₀ at low rates, a power law of exponent −m at
- * high ones, half of η₀ at γ̇ = 1/λ. Source: M. M. Cross, J. Colloid Sci. 20 (1965) 417 (memory).
+ * The Cross law without a lower plateau, {@code η = η₀ / (1 + (λ γ̇)^m)}: η₀ at low rates, a power law of exponent −m
+ * at high ones, half of η₀ at γ̇ = 1/λ. Source: M. M. Cross, J. Colloid Sci. 20 (1965) 417 (memory).
  *
  * @param eta0   zero-shear viscosity in Pa·s, above zero
  * @param lambda time constant in s, above zero
@@ -20,7 +20,9 @@ public record Cross(double eta0, double lambda, double m) implements ViscosityLa
             .source("M. M. Cross, J. Colloid Sci. 20 (1965) 417 (memory)")
             .parameter(Parameter.positive("eta0", "zero-shear viscosity η₀", "Pa·s"))
             .parameter(Parameter.positive("lambda", "time constant λ", "s"))
-            .parameter(Parameter.positive("m", "thinning exponent m", "1").on(Scale.LINEAR).within(0, 1))
+            .parameter(Parameter.positive("m", "thinning exponent m", "1")
+                    .on(Scale.LINEAR)
+                    .within(0, 1))
             .made(v -> new Cross(v.at(0), v.at(1), v.at(2)))
             .startingFrom(shape -> Doubles.of(shape.lowEnd().mean(), shape.bendTime(), -shape.thinning()))
             .build();

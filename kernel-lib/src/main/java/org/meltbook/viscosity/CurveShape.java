@@ -67,10 +67,11 @@ public record CurveShape(Doubles rates, Doubles viscosities) {
         return new CurveShape(rates.pick(places), viscosities.pick(places));
     }
 
-    /** Time in s at whose inverse the level of the low end meets the thinning branch. */
+    /** Time in s at whose inverse the level of the low end meets the thinning branch, kept near the measured rates. */
     double bendTime() {
         int end = rates.size() - 1;
         double fall = Math.min(1, viscosities.at(end) / lowEnd().mean());
-        return Math.pow(fall, 1 / thinning()) / rates.at(end);
+        double time = Math.pow(fall, 1 / thinning()) / rates.at(end);
+        return Math.min(1e3 / rates.at(0), Math.max(1e-3 / rates.at(end), time));
     }
 }

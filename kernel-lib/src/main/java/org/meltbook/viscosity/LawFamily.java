@@ -1,5 +1,7 @@
 package org.meltbook.viscosity;
 
+import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.function.Function;
 import org.meltbook.base.Doubles;
@@ -102,7 +104,9 @@ public final class LawFamily {
         }
         return new LawFamily(
                 this,
-                parameters.stream().map(p -> p.name().equals(parameter) ? change.apply(p) : p).toList());
+                parameters.stream()
+                        .map(p -> p.name().equals(parameter) ? change.apply(p) : p)
+                        .toList());
     }
 
     /** The family as a fit sees it: viscosity in Pa·s over shear rate in 1/s. */
@@ -136,7 +140,7 @@ public final class LawFamily {
             if (usable(values)) {
                 family.of(Doubles.of(values)).gradient(x, into);
             } else {
-                java.util.Arrays.fill(into, Double.NaN);
+                Arrays.fill(into, Double.NaN);
             }
         }
 
@@ -157,7 +161,7 @@ public final class LawFamily {
         private final String name;
         private String formula = "";
         private String source = "";
-        private final List<Parameter> parameters = new java.util.ArrayList<>();
+        private final List<Parameter> parameters = new ArrayList<>();
         private Function<Doubles, ViscosityLaw> maker = values -> {
             throw new RangeException("this family cannot make a law");
         };

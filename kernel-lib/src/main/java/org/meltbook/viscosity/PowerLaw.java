@@ -6,8 +6,8 @@ import org.meltbook.fit.Parameter.Scale;
 import org.meltbook.units.Require;
 
 /**
- * A straight line in logarithms, {@code η = K γ̇^(n−1)}. Without a plateau: for n below 1 the viscosity grows without bound
- * as the rate goes to zero. Source: W. Ostwald, Kolloid-Zeitschrift 36 (1925) 99, and A. de Waele, 1923 (memory).
+ * A straight line in logarithms, {@code η = K γ̇^(n−1)}. Without a plateau: for n below 1 the viscosity grows without
+ * bound as the rate goes to zero. Source: W. Ostwald, Kolloid-Zeitschrift 36 (1925) 99, and A. de Waele, 1923 (memory).
  *
  * @param k consistency in Pa·sⁿ, above zero
  * @param n exponent of the stress, no unit, 0 to 3
@@ -18,11 +18,13 @@ public record PowerLaw(double k, double n) implements ViscosityLaw {
             .formula("η = K γ̇^(n−1)")
             .source("W. Ostwald, Kolloid-Zeitschrift 36 (1925) 99; A. de Waele, 1923 (memory)")
             .parameter(Parameter.positive("k", "consistency K", "Pa·sⁿ"))
-            .parameter(Parameter.positive("n", "exponent n", "1").on(Scale.LINEAR).within(0, 3))
+            .parameter(
+                    Parameter.positive("n", "exponent n", "1").on(Scale.LINEAR).within(0, 3))
             .made(v -> new PowerLaw(v.at(0), v.at(1)))
             .startingFrom(shape -> {
                 double n = Math.min(2.9, Math.max(0.05, 1 + shape.slope()));
-                double middle = Math.exp(shape.rates().stream().map(Math::log).average().orElseThrow());
+                double middle =
+                        Math.exp(shape.rates().stream().map(Math::log).average().orElseThrow());
                 return Doubles.of(shape.mean() * Math.pow(middle, 1 - n), n);
             })
             .build();
@@ -64,7 +66,9 @@ public record PowerLaw(double k, double n) implements ViscosityLaw {
         return k * Math.pow(Double.POSITIVE_INFINITY, n - 1);
     }
 
-    /** Exponent of the stress when the rate is written as a power of it, 1/n: how creep laws of rock models are quoted. */
+    /**
+     * Exponent of the stress when the rate is written as a power of it, 1/n: how creep laws of rock models are quoted.
+     */
     public double stressExponent() {
         return 1 / n;
     }

@@ -9,9 +9,9 @@ import org.meltbook.units.Prediction;
 import org.meltbook.units.Quantity;
 
 /**
- * The exponent with which the shear rate grows with the shear stress, d ln γ̇ / d ln σ: one for a Newtonian fluid. It is
- * the slope of the straight line of ln γ̇ over ln σ, as creep laws are quoted; a power law fitted to viscosities gives
- * 1/n, which differs in the third digit where the curve bends, because it divides the misfit otherwise.
+ * The exponent with which the shear rate grows with the shear stress, d ln γ̇ / d ln σ: one for a Newtonian fluid. It
+ * is the slope of the straight line of ln γ̇ over ln σ, as creep laws are quoted; a power law fitted to viscosities
+ * gives 1/n, which differs in the third digit where the curve bends, because it divides the misfit otherwise.
  */
 public final class StressExponent {
     private StressExponent() {}
@@ -28,8 +28,8 @@ public final class StressExponent {
             double rate = usable.x().at(i);
             double stress = usable.y().at(i);
             if (!(rate > 0 && stress > 0)) {
-                throw new RangeException("point " + (i + 1) + " has shear rate " + rate + " 1/s and shear stress " + stress
-                        + " Pa: a stress exponent needs both above zero");
+                throw new RangeException("point " + (i + 1) + " has shear rate " + rate + " 1/s and shear stress "
+                        + stress + " Pa: a stress exponent needs both above zero");
             }
             line.addData(Math.log(stress), Math.log(rate));
         }
@@ -37,7 +37,12 @@ public final class StressExponent {
             throw new RangeException("a stress exponent needs three points at least, found " + usable.size());
         }
         double half = line.getSlopeConfidenceInterval();
-        return Prediction.of("stress exponent", Quantity.RATIO, line.getSlope(), line.getSlope() - half, line.getSlope() + half)
+        return Prediction.of(
+                        "stress exponent",
+                        Quantity.RATIO,
+                        line.getSlope(),
+                        line.getSlope() - half,
+                        line.getSlope() + half)
                 .minding("slope through " + usable.size() + " points from "
                         + NumberText.of(usable.x().values().smallest()) + " to "
                         + NumberText.of(usable.x().values().largest())

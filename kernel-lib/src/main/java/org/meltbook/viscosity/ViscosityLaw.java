@@ -6,11 +6,11 @@ import org.meltbook.base.Doubles;
  * A scalar law of shear viscosity with its constants: what the viscosity is at a shear rate.
  *
  * <p>Contract, held by one test for every family of {@link ViscosityLaws}: (1) immutable; its constructor refuses
- * constants outside their bounds; (2) {@code at} takes any rate from zero to finite in 1/s and gives Pa·s, and refuses a
- * negative rate or NaN; (3) {@code gradient} gives the exact derivatives in the order of {@code family().parameters()};
- * (4) {@code at} tends to {@code zeroRateLimit} and {@code infiniteRateLimit}, which may be infinite or zero;
- * (5) {@code family().of(values())} equals the law; (6) the family names a source, and gives from any flow curve of two
- * different rates or more a start that its own constructor accepts.
+ * constants outside their bounds; (2) {@code at} takes any rate from zero to finite in 1/s and gives Pa·s, and refuses
+ * a negative rate or NaN; (3) {@code gradient} gives the exact derivatives in the order of {@code
+ * family().parameters()}; (4) {@code at} tends to {@code zeroRateLimit} and {@code infiniteRateLimit}, which may be
+ * infinite or zero; (5) {@code family().of(values())} equals the law; (6) the family names a source, and gives from any
+ * flow curve of two different rates or more a start that its own constructor accepts.
  */
 public interface ViscosityLaw {
     /** The family to which the law belongs. */

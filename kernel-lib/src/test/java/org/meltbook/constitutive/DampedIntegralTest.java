@@ -32,14 +32,20 @@ class DampedIntegralTest {
         // ten digits printed
         for (int i = 0; i < response.rates().size(); i++) {
             near(steady.numbers("eta_single_exp_Pa_s")[i], response.viscosity().at(i), 1e-9);
-            near(steady.numbers("Psi1_single_exp_Pa_s2")[i], response.firstNormalStressCoefficient().at(i), 1e-9);
+            near(
+                    steady.numbers("Psi1_single_exp_Pa_s2")[i],
+                    response.firstNormalStressCoefficient().at(i),
+                    1e-9);
         }
         ReferenceTable growth = ReferenceTable.of("computed_ldpe_melt_I_startup_single_exp.csv");
         for (int i = 0; i < growth.numbers("time_s").length; i++) {
             StartUpResponse startUp = MODEL.startUpShear(
                     growth.numbers("shear_rate_1_per_s")[i], Doubles.of(growth.numbers("time_s")[i]));
             near(growth.numbers("eta_plus_Pa_s")[i], startUp.shearStressGrowth().at(0), 1e-9);
-            near(growth.numbers("Psi1_plus_Pa_s2")[i], startUp.firstNormalStressGrowth().at(0), 1e-9);
+            near(
+                    growth.numbers("Psi1_plus_Pa_s2")[i],
+                    startUp.firstNormalStressGrowth().at(0),
+                    1e-9);
         }
     }
 
@@ -122,6 +128,13 @@ class DampedIntegralTest {
         };
         RangeException refused = assertThrows(RangeException.class, () -> MODEL.stress(reversal, 1));
         assertTrue(refused.getMessage().contains("found reversal"));
+    }
+
+    @Test
+    void says_that_it_has_no_second_normal_stress_and_that_its_damping_is_for_shear() {
+        String limits = String.join("; ", MODEL.limits());
+        assertTrue(limits.contains("N₂ = 0"), limits);
+        assertTrue(limits.contains("n holds for shear only"), limits);
     }
 
     @ParameterizedTest

@@ -1,6 +1,7 @@
 package org.meltbook.constitutive;
 
 import static org.junit.jupiter.api.Assertions.assertEquals;
+import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
@@ -31,7 +32,10 @@ class UpperConvectedMaxwellTest {
     void in_steady_shear_neither_viscosity_nor_normal_stress_coefficient_depends_on_the_rate(double rate) {
         SteadyShearResponse steady = MODEL.steadyShear(Doubles.of(rate));
         near(MELT.zeroShearViscosity(), steady.viscosity().at(0), 1e-13);
-        near(MELT.zeroRateNormalStressCoefficient(), steady.firstNormalStressCoefficient().at(0), 1e-13);
+        near(
+                MELT.zeroRateNormalStressCoefficient(),
+                steady.firstNormalStressCoefficient().at(0),
+                1e-13);
         assertEquals(0, steady.secondNormalStressDifference().at(0));
     }
 
@@ -60,7 +64,8 @@ class UpperConvectedMaxwellTest {
                 normal += 2 * rate * rate * mode.viscosity() * mode.time() * grown;
             }
             Stress stress = MODEL.stress(new StartUpShear(rate), time);
-            // rounding of the scaled matrix grows with λ γ̇, here up to 1e6; the closed form of N₁ loses six digits by itself
+            // rounding of the scaled matrix grows with λ γ̇, here up to 1e6; the closed form of N₁ loses six digits by
+            // itself
             double tolerance = 1e-11 + 1e-15 * rate * 1000;
             near(shear, stress.shear(), tolerance);
             near(normal, stress.firstNormalDifference(), 1e-9 + 1e-15 * rate * 1000);
@@ -74,8 +79,10 @@ class UpperConvectedMaxwellTest {
         Stress late = MODEL.stress(new StartUpShear(3), 1e6);
         near(steady.shear(), late.shear(), 1e-12);
         near(steady.firstNormalDifference(), late.firstNormalDifference(), 1e-12);
-        assertEquals(Stress.NONE.components(), MODEL.stress(new StartUpShear(3), 0).components());
-        assertEquals(Stress.NONE.components(), MODEL.stress(new StartUpShear(3), -1).components());
+        assertEquals(
+                Stress.NONE.components(), MODEL.stress(new StartUpShear(3), 0).components());
+        assertEquals(
+                Stress.NONE.components(), MODEL.stress(new StartUpShear(3), -1).components());
     }
 
     @Test
@@ -89,8 +96,8 @@ class UpperConvectedMaxwellTest {
         }
         ReferenceTable growth = ReferenceTable.of("ucm_startup_shear.csv");
         for (int i = 0; i < growth.numbers("time[s]").length; i++) {
-            Stress stress = ONE.stress(
-                    new StartUpShear(growth.numbers("shear_rate[1/s]")[i]), growth.numbers("time[s]")[i]);
+            Stress stress =
+                    ONE.stress(new StartUpShear(growth.numbers("shear_rate[1/s]")[i]), growth.numbers("time[s]")[i]);
             // the two methods of the table agree to 1.2e-11
             near(growth.numbers("sigma[Pa]")[i], stress.shear(), 2e-11);
             near(growth.numbers("N1[Pa]")[i], stress.firstNormalDifference(), 2e-11);
@@ -100,8 +107,10 @@ class UpperConvectedMaxwellTest {
     /** A cessation, given as a flow of its own: σ decays like exp(−t/λ), N₁ too (one mode, closed form). */
     @Test
     void carries_any_history_of_constant_pieces() {
-        Flow cessation = new Pieces(VelocityGradient.simpleShear(4), VelocityGradient.REST, List.of(
-                Component.XX, Component.YY, Component.ZZ, Component.XY));
+        Flow cessation = new Pieces(
+                VelocityGradient.simpleShear(4),
+                VelocityGradient.REST,
+                List.of(Component.XX, Component.YY, Component.ZZ, Component.XY));
         Stress stress = ONE.stress(cessation, 0.7);
         near(20000 * 0.5 * 4 * Math.exp(-0.7 / 0.5), stress.shear(), 1e-13);
         near(2 * 20000 * 0.25 * 16 * Math.exp(-0.7 / 0.5), stress.firstNormalDifference(), 1e-13);
@@ -129,6 +138,28 @@ class UpperConvectedMaxwellTest {
                 () -> ONE.stress(new Pieces(shear, shear, List.of(Component.YY, Component.XX)), -1));
     }
 
+    /**
+     * Against the damped integral model of the published melt, n = 0.143. The damping enters with n λ γ̇, so the slowest
+     * modes, which carry N₁ but little of η, go first: neither departure waits for Wi = 1.
+     */
+    @Test
+    void its_limits_name_the_rates_where_melts_depart_from_it() {
+        double rate = 1 / MELT.meanRelaxationTime();
+        SteadyShearResponse damped = new DampedIntegral(MELT, 0.143).steadyShear(Doubles.of(0.05 * rate, 0.3 * rate));
+        SteadyShearResponse maxwell = MODEL.steadyShear(damped.rates());
+        assertEquals(
+                -0.12,
+                damped.firstNormalStressCoefficient().at(0)
+                                / maxwell.firstNormalStressCoefficient().at(0)
+                        - 1,
+                0.005);
+        assertEquals(-0.07, damped.viscosity().at(1) / maxwell.viscosity().at(1) - 1, 0.005);
+        String limits = String.join("; ", MODEL.limits());
+        assertTrue(limits.contains("N₁ from Wi ≈ 0.05 on"), limits);
+        assertTrue(limits.contains("(12 % below the model), η from Wi ≈ 0.3 on"), limits);
+        assertFalse(limits.contains("Wi = 1"), limits);
+    }
+
     @ParameterizedTest
     @ValueSource(doubles = {0, -1, Double.NaN, Double.POSITIVE_INFINITY})
     void rejects_rates_and_times_that_are_none(double bad) {
@@ -147,7 +178,11 @@ class UpperConvectedMaxwellTest {
         for (double time : new double[] {1e-7, 1e-3, 10, 1e7}) {
             near(
                     wide.stressGrowth(time),
-                    new UpperConvectedMaxwell(wide).stress(new StartUpShear(1e-3), time).shear() / 1e-3, 1e-11);
+                    new UpperConvectedMaxwell(wide)
+                                    .stress(new StartUpShear(1e-3), time)
+                                    .shear()
+                            / 1e-3,
+                    1e-11);
         }
     }
 

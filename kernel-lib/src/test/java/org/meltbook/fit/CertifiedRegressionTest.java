@@ -31,13 +31,17 @@ class CertifiedRegressionTest {
 
     private static Model model(String name, int count) {
         return switch (name) {
-            case "Misra1a" -> new TestModel(count, (x, b) -> b[0] * -Math.expm1(-b[1] * x),
+            case "Misra1a" -> new TestModel(
+                    count,
+                    (x, b) -> b[0] * -Math.expm1(-b[1] * x),
                     (x, b, d) -> set(d, -Math.expm1(-b[1] * x), b[0] * x * Math.exp(-b[1] * x)));
             case "Chwirut2" -> new TestModel(count, (x, b) -> Math.exp(-b[0] * x) / (b[1] + b[2] * x), (x, b, d) -> {
                 double y = Math.exp(-b[0] * x) / (b[1] + b[2] * x);
                 set(d, -x * y, -y / (b[1] + b[2] * x), -x * y / (b[1] + b[2] * x));
             });
-            case "DanWood" -> new TestModel(count, (x, b) -> b[0] * Math.pow(x, b[1]),
+            case "DanWood" -> new TestModel(
+                    count,
+                    (x, b) -> b[0] * Math.pow(x, b[1]),
                     (x, b, d) -> set(d, Math.pow(x, b[1]), b[0] * Math.pow(x, b[1]) * Math.log(x)));
             case "Rat42" -> new TestModel(count, (x, b) -> b[0] / (1 + Math.exp(b[1] - b[2] * x)), (x, b, d) -> {
                 double e = Math.exp(b[1] - b[2] * x);
@@ -64,7 +68,10 @@ class CertifiedRegressionTest {
     }
 
     private static double bottom(double x, double[] b, int above) {
-        return 1 + IntStream.range(above, b.length).mapToDouble(i -> b[i] * Math.pow(x, i - above + 1)).sum();
+        return 1
+                + IntStream.range(above, b.length)
+                        .mapToDouble(i -> b[i] * Math.pow(x, i - above + 1))
+                        .sum();
     }
 
     private static void set(double[] into, double... values) {

@@ -67,7 +67,10 @@ class FitTest {
     void finds_the_optimum_of_the_general_purpose_optimiser() {
         double[] made = made(0.05);
         Doubles x = Doubles.logSpaced(0.1, 5, made.length);
-        Fit fit = Problem.of(decay(HEIGHT, RATE)).data(x, Doubles.of(made)).from(1, 1).solve();
+        Fit fit = Problem.of(decay(HEIGHT, RATE))
+                .data(x, Doubles.of(made))
+                .from(1, 1)
+                .solve();
         var outside = new LevenbergMarquardtOptimizer()
                 .withCostRelativeTolerance(1e-15)
                 .withParameterRelativeTolerance(1e-15)
@@ -93,13 +96,19 @@ class FitTest {
 
     private static double[] made(double noise) {
         Random random = new Random(7);
-        return Doubles.logSpaced(0.1, 5, 25).map(x -> 3 * Math.exp(-0.8 * x) + noise * random.nextGaussian()).toArray();
+        return Doubles.logSpaced(0.1, 5, 25)
+                .map(x -> 3 * Math.exp(-0.8 * x) + noise * random.nextGaussian())
+                .toArray();
     }
 
     @Test
     void equal_deviations_give_the_same_fit_whatever_their_size() {
         Fit plain = Problem.of(LINE).data(X, NOISY).from(0, 0).solve();
-        Fit weighted = Problem.of(LINE).data(X, NOISY).deviations(X.map(x -> 12.5)).from(0, 0).solve();
+        Fit weighted = Problem.of(LINE)
+                .data(X, NOISY)
+                .deviations(X.map(x -> 12.5))
+                .from(0, 0)
+                .solve();
         assertArrayEquals(plain.values().toArray(), weighted.values().toArray(), 1e-12);
         assertEquals(plain.standardError("b2"), weighted.standardError("b2"), 1e-12);
     }
@@ -107,17 +116,25 @@ class FitTest {
     @Test
     void bounds_hold_at_every_trial_and_a_parameter_at_its_bound_says_so() {
         Parameter capped = RATE.within(0, 0.5);
-        Model watched = new TestModel(List.of(HEIGHT, capped), (x, b) -> {
-            assertTrue(b[0] > 0 && b[1] > 0 && b[1] <= 0.5, "tried outside its bounds: " + b[1]);
-            return b[0] * Math.exp(-b[1] * x);
-        }, decay(HEIGHT, capped)::gradient);
-        Fit fit = Problem.of(watched).data(Doubles.logSpaced(0.1, 5, 25), Doubles.of(made(0.05))).from(1, 0.1).solve();
+        Model watched = new TestModel(
+                List.of(HEIGHT, capped),
+                (x, b) -> {
+                    assertTrue(b[0] > 0 && b[1] > 0 && b[1] <= 0.5, "tried outside its bounds: " + b[1]);
+                    return b[0] * Math.exp(-b[1] * x);
+                },
+                decay(HEIGHT, capped)::gradient);
+        Fit fit = Problem.of(watched)
+                .data(Doubles.logSpaced(0.1, 5, 25), Doubles.of(made(0.05)))
+                .from(1, 0.1)
+                .solve();
         assertEquals(Fit.Status.CONVERGED, fit.status());
         assertEquals(0.5, fit.values().at(1));
         assertEquals(Estimate.Status.AT_BOUND, fit.estimate("rate").status());
         assertTrue(Double.isNaN(fit.standardError("rate")));
         assertTrue(fit.standardError("height") > 0);
-        assertTrue(fit.cautions().get(0).contains("rate rests on its bound"), fit.cautions().toString());
+        assertTrue(
+                fit.cautions().get(0).contains("rate rests on its bound"),
+                fit.cautions().toString());
     }
 
     @Test
@@ -142,7 +159,9 @@ class FitTest {
         assertEquals(Estimate.Status.NOT_IDENTIFIED, fit.estimate("b1").status());
         assertEquals(Estimate.Status.NOT_IDENTIFIED, fit.estimate("b2").status());
         assertEquals(Estimate.Status.ESTIMATED, fit.estimate("b3").status());
-        assertTrue(fit.cautions().get(0).contains("do not tell b1 from b2"), fit.cautions().toString());
+        assertTrue(
+                fit.cautions().get(0).contains("do not tell b1 from b2"),
+                fit.cautions().toString());
     }
 
     @Test
@@ -153,12 +172,15 @@ class FitTest {
         });
         Fit fit = Problem.of(idle).data(X, NOISY).from(1, 1).solve();
         assertEquals(Estimate.Status.NOT_IDENTIFIED, fit.estimate("b2").status());
-        assertTrue(fit.cautions().get(0).contains("do not depend on b2"), fit.cautions().toString());
+        assertTrue(
+                fit.cautions().get(0).contains("do not depend on b2"),
+                fit.cautions().toString());
     }
 
     @Test
     void steps_back_where_the_model_has_no_value() {
-        Model root = new TestModel(1, (x, b) -> Math.sqrt(b[0] - 1) * x, (x, b, d) -> d[0] = x / (2 * Math.sqrt(b[0] - 1)));
+        Model root =
+                new TestModel(1, (x, b) -> Math.sqrt(b[0] - 1) * x, (x, b, d) -> d[0] = x / (2 * Math.sqrt(b[0] - 1)));
         Fit fit = Problem.of(root).data(X, X.map(x -> 0.01 * x)).from(400).solve();
         assertEquals(1.0001, fit.values().at(0), 1e-9);
         assertEquals(Fit.Status.CONVERGED, fit.status());
@@ -166,7 +188,8 @@ class FitTest {
 
     @Test
     void an_early_stop_is_a_status_and_a_caution() {
-        Fit fit = Fit.of(Problem.of(LINE).data(X, NOISY).from(0, 0), new double[] {1, 1}, Fit.Status.EVALUATIONS_SPENT, 2000);
+        Fit fit = Fit.of(
+                Problem.of(LINE).data(X, NOISY).from(0, 0), new double[] {1, 1}, Fit.Status.EVALUATIONS_SPENT, 2000);
         assertTrue(fit.headline().contains("NOT converged"));
         assertTrue(fit.cautions().get(0).contains("without converging"));
     }
@@ -182,7 +205,10 @@ class FitTest {
 
     @Test
     void as_many_parameters_as_points_leave_no_error() {
-        Fit fit = Problem.of(LINE).data(Doubles.of(1, 2), Doubles.of(3, 5)).from(0, 0).solve();
+        Fit fit = Problem.of(LINE)
+                .data(Doubles.of(1, 2), Doubles.of(3, 5))
+                .from(0, 0)
+                .solve();
         assertEquals(2, fit.values().at(1), 1e-12);
         assertTrue(Double.isNaN(fit.standardError("b2")));
         assertTrue(fit.cautions().get(0).contains("nothing is left to judge the errors by"));
@@ -191,29 +217,40 @@ class FitTest {
     @Test
     void wrong_input_throws_with_what_was_found() {
         Problem.Builder line = Problem.of(LINE);
-        assertThrows(RangeException.class, () -> line.data(Doubles.of(1), Doubles.of(1)).from(0, 0));
-        assertThrows(RangeException.class, () -> line.data(Doubles.of(1, 1, 1), Doubles.of(1, 2, 3)).from(0, 0));
+        assertThrows(RangeException.class, () -> line.data(Doubles.of(1), Doubles.of(1))
+                .from(0, 0));
+        assertThrows(RangeException.class, () -> line.data(Doubles.of(1, 1, 1), Doubles.of(1, 2, 3))
+                .from(0, 0));
         assertThrows(RangeException.class, () -> line.data(X, X.pick(0)).from(0, 0));
-        assertThrows(RangeException.class, () -> line.data(X, X.map(x -> Double.NaN)).from(0, 0));
+        assertThrows(
+                RangeException.class, () -> line.data(X, X.map(x -> Double.NaN)).from(0, 0));
         assertThrows(RangeException.class, () -> line.data(X, NOISY).from(0));
         assertThrows(RangeException.class, () -> line.data(X, NOISY).from(0, Double.NaN));
-        assertThrows(RangeException.class, () -> Problem.of(LINE).data(X, X.map(x -> x - 1)).relative().from(0, 0));
+        assertThrows(
+                RangeException.class,
+                () -> Problem.of(LINE).data(X, X.map(x -> x - 1)).relative().from(0, 0));
         assertThrows(RangeException.class, () -> RATE.within(2, 1));
         assertThrows(RangeException.class, () -> RATE.within(-1, 1));
         assertThrows(RangeException.class, () -> RATE.within(0, 1).heldAt(2));
-        assertThrows(RangeException.class, () -> Problem.of(decay(RATE, RATE)).data(X, NOISY).from(1, 1));
-        assertThrows(RangeException.class, () -> Problem.of(decay(HEIGHT, RATE)).data(X, NOISY).from(1, -1));
+        assertThrows(
+                RangeException.class,
+                () -> Problem.of(decay(RATE, RATE)).data(X, NOISY).from(1, 1));
+        assertThrows(
+                RangeException.class,
+                () -> Problem.of(decay(HEIGHT, RATE)).data(X, NOISY).from(1, -1));
         RangeException unknown = assertThrows(
-                RangeException.class, () -> Problem.of(LINE).data(X, NOISY).from(0, 0).solve().estimate("b9"));
+                RangeException.class,
+                () -> Problem.of(LINE).data(X, NOISY).from(0, 0).solve().estimate("b9"));
         assertTrue(unknown.getMessage().contains("[b1, b2]"));
     }
 
     @ParameterizedTest
     @ValueSource(doubles = {0, -1, Double.NaN, Double.POSITIVE_INFINITY})
     void rejects_a_standard_deviation(double bad) {
-        assertThrows(
-                RangeException.class,
-                () -> Problem.of(LINE).data(X, NOISY).deviations(X.map(x -> x == 3 ? bad : 1)).from(0, 0));
+        assertThrows(RangeException.class, () -> Problem.of(LINE)
+                .data(X, NOISY)
+                .deviations(X.map(x -> x == 3 ? bad : 1))
+                .from(0, 0));
     }
 
     @Test

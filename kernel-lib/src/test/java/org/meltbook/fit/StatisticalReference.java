@@ -29,8 +29,12 @@ record StatisticalReference(
             }
         }
         return new StatisticalReference(
-                column(points, 1), column(points, 0), List.of(column(parameters, 0), column(parameters, 1)),
-                column(parameters, 2), column(parameters, 3), sum);
+                column(points, 1),
+                column(points, 0),
+                List.of(column(parameters, 0), column(parameters, 1)),
+                column(parameters, 2),
+                column(parameters, 3),
+                sum);
     }
 
     private static Doubles column(List<double[]> rows, int column) {
@@ -38,6 +42,8 @@ record StatisticalReference(
     }
 
     private static double[] numbers(String text) {
-        return java.util.Arrays.stream(text.trim().split("\\s+")).mapToDouble(Double::parseDouble).toArray();
+        return java.util.Arrays.stream(text.trim().split("\\s+"))
+                .mapToDouble(Double::parseDouble)
+                .toArray();
     }
 }

@@ -14,7 +14,12 @@ record TestModel(List<Parameter> parameters, Value value, Slope slope) implement
     }
 
     TestModel(int count, Value value, Slope slope) {
-        this(IntStream.rangeClosed(1, count).mapToObj(i -> Parameter.unbounded("b" + i, "1")).toList(), value, slope);
+        this(
+                IntStream.rangeClosed(1, count)
+                        .mapToObj(i -> Parameter.unbounded("b" + i, "1"))
+                        .toList(),
+                value,
+                slope);
     }
 
     @Override

@@ -41,7 +41,9 @@ class MatrixExponentialTest {
     @Test
     void drives_a_plain_integrator_though_its_matrix_is_singular() {
         assertEquals(
-                5.0, MatrixExponential.propagate(matrix(new double[][] {{0}}), new double[] {2}, new double[] {1}, 2).at(0));
+                5.0,
+                MatrixExponential.propagate(matrix(new double[][] {{0}}), new double[] {2}, new double[] {1}, 2)
+                        .at(0));
     }
 
     @Test

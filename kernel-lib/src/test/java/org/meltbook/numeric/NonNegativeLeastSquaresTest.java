@@ -91,7 +91,10 @@ class NonNegativeLeastSquaresTest {
             }
             return sum;
         });
-        assertArrayEquals(truth, NonNegativeLeastSquares.solve(a, b, Progress.QUIET).unknowns().toArray(), 1e-11);
+        assertArrayEquals(
+                truth,
+                NonNegativeLeastSquares.solve(a, b, Progress.QUIET).unknowns().toArray(),
+                1e-11);
     }
 
     @Test

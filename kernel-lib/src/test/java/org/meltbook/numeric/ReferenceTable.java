@@ -6,8 +6,8 @@ import java.nio.charset.StandardCharsets;
 import java.util.List;
 
 /**
- * Numbers with a source, kept under {@code src/test/resources/reference}: lines starting with {@code #} tell the source,
- * the next line names the columns, the others hold values parted by commas.
+ * Numbers with a source, kept under {@code src/test/resources/reference}: lines starting with {@code #} tell the
+ * source, the next line names the columns, the others hold values parted by commas.
  */
 public final class ReferenceTable {
     private final List<String> names;
@@ -50,7 +50,9 @@ public final class ReferenceTable {
     /** The numbers of a column. */
     public double[] numbers(String column) {
         int place = place(column);
-        return lines.stream().mapToDouble(line -> Double.parseDouble(line[place])).toArray();
+        return lines.stream()
+                .mapToDouble(line -> Double.parseDouble(line[place]))
+                .toArray();
     }
 
     /** The distinct texts of a column, in order. */

@@ -13,7 +13,9 @@ import org.meltbook.units.Quantity;
 public final class PublishedMelts {
     private PublishedMelts() {}
 
-    /** Narrow polystyrene, 290 kg/mol, 180 °C: Schausberger, Schindlauer, Janeschitz-Kriegl, Rheol. Acta 24 (1985) 220. */
+    /**
+     * Narrow polystyrene, 290 kg/mol, 180 °C: Schausberger, Schindlauer, Janeschitz-Kriegl, Rheol. Acta 24 (1985) 220.
+     */
     static FrequencySweep narrow290() {
         return sweep("polystyrene 290 kg/mol", "saos_ps_290k_narrow_180C.csv");
     }

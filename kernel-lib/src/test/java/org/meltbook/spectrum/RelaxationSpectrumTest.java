@@ -16,7 +16,10 @@ import org.meltbook.numeric.ReferenceTable;
 class RelaxationSpectrumTest {
     private static final RelaxationSpectrum MELT = PublishedMelts.meltOne();
 
-    /** The table is from memory of Laun 1978; two remembered figures agree: mean time 58.7 s, η₀ of 5.0e4 to 5.2e4 Pa·s. */
+    /**
+     * The table is from memory of Laun 1978; two remembered figures agree: mean time 58.7 s, η₀ of 5.0e4 to 5.2e4
+     * Pa·s.
+     */
     @Test
     void the_published_low_density_polyethylene_has_its_known_sums() {
         assertEquals(51063.7, MELT.zeroShearViscosity(), 0.05);

@@ -31,7 +31,9 @@ class ViscosityLawContractTest {
             ReferenceTable table = ReferenceTable.of("viscosity_laws.csv").where("law", family.name());
             for (String text : table.distinct("values")) {
                 ReferenceTable rows = table.where("values", text);
-                Doubles values = Doubles.of(Arrays.stream(text.split(";")).mapToDouble(Double::parseDouble).toArray());
+                Doubles values = Doubles.of(Arrays.stream(text.split(";"))
+                        .mapToDouble(Double::parseDouble)
+                        .toArray());
                 for (int i = 0; i < rows.numbers("rate").length; i++) {
                     all.add(new Known(family.of(values), rows.numbers("rate")[i], rows.numbers("viscosity")[i]));
                 }
@@ -71,7 +73,8 @@ class ViscosityLawContractTest {
             for (int i = 0; i < count; i++) {
                 double value = law.values().at(i);
                 double step = 1e-5 * Math.max(value, 1e-3);
-                boolean edge = value - 2 * step < law.family().parameters().get(i).low();
+                boolean edge =
+                        value - 2 * step < law.family().parameters().get(i).low();
                 double difference = edge ? forward(law, i, rate, step) : central(law, i, rate, step);
                 // truncation of the difference (h² with h = 1e-5) and rounding (1e-16 / h) of a viscosity of this size
                 double size = Math.abs(exact[i]) + law.at(rate) / Math.max(value, 1e-3);
@@ -85,7 +88,10 @@ class ViscosityLawContractTest {
     }
 
     private static double forward(ViscosityLaw law, int i, double rate, double step) {
-        return (-3 * law.at(rate) + 4 * shifted(law, i, step).at(rate) - shifted(law, i, 2 * step).at(rate)) / (2 * step);
+        return (-3 * law.at(rate)
+                        + 4 * shifted(law, i, step).at(rate)
+                        - shifted(law, i, 2 * step).at(rate))
+                / (2 * step);
     }
 
     private static ViscosityLaw shifted(ViscosityLaw law, int i, double by) {
@@ -147,7 +153,8 @@ class ViscosityLawContractTest {
         assertFalse(family.source().isBlank());
         assertTrue(family.toString().contains("η ="));
         Doubles two = Doubles.of(1, 2);
-        for (Doubles viscosities : List.of(Doubles.of(5, 5), Doubles.of(5, 1), Doubles.of(1, 5), Doubles.of(1e6, 1e-6))) {
+        for (Doubles viscosities :
+                List.of(Doubles.of(5, 5), Doubles.of(5, 1), Doubles.of(1, 5), Doubles.of(1e6, 1e-6))) {
             assertTrue(family.of(family.guess(two, viscosities)).at(1) > 0, viscosities.toString());
         }
         assertThrows(RangeException.class, () -> family.guess(Doubles.of(1, 1), Doubles.of(2, 3)));
@@ -157,7 +164,8 @@ class ViscosityLawContractTest {
 
     @Test
     void names_do_not_repeat_and_hold_no_locale() {
-        List<String> names = families().stream().map(f -> f.name().toLowerCase(Locale.ROOT)).toList();
+        List<String> names =
+                families().stream().map(f -> f.name().toLowerCase(Locale.ROOT)).toList();
         assertEquals(names.size(), names.stream().distinct().count());
     }
 
