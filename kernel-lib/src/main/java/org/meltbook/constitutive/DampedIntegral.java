@@ -37,9 +37,10 @@ public record DampedIntegral(RelaxationSpectrum spectrum, double damping) implem
     @Override
     public List<String> limits() {
         return List.of(
-                "the damping was measured in single steps of shear; on a reversal of the flow this form would let the "
-                        + "network heal, which melts do not do, so reversals are refused",
-                "N₂ is zero in this form; measured melts have a small negative one");
+                "the damping n was measured in single steps of shear; on a reversal this form would let the network "
+                        + "heal, which melts do not do, so reversals are refused",
+                "n holds for shear only; extension needs a damping of its own",
+                "N₂ = 0 in this model; measured melts have a small negative one");
     }
 
     @Override

@@ -70,8 +70,9 @@ public final class Comparison {
     private static List<Object> figures(List<Output> outputs) {
         List<Object> figures = new ArrayList<>();
         for (Output output : outputs) {
-            if (output instanceof Output.Value value && value.bundle().data().get(FigureData.MIME) instanceof List<?> l) {
-                figures.addAll(l);
+            if (output instanceof Output.Value value
+                    && value.bundle().data().get(FigureData.MIME) instanceof List<?> several) {
+                figures.addAll(several);
             }
         }
         return figures;

@@ -8,11 +8,11 @@ import java.util.Optional;
 
 /**
  * Finds the files that notebooks read. Notebooks lie in a folder of the project and data in another, and Jupyter starts
- * a kernel beside the notebook: so a name such as {@code data/published/x.csv}, or short {@code published/x.csv}, is looked
- * for beside the notebook, then one folder up, and so on to the first folder that has it.
+ * a kernel beside the notebook: so a name such as {@code data/published/x.csv}, or short {@code published/x.csv}, is
+ * looked for beside the notebook, then one folder up, and so on to the first folder that has it.
  */
 public final class DataFolder {
-    /** While a notebook is run without Jupyter, its folder; for the process has one working folder for all notebooks. */
+    /** The folder of the notebook that is run without Jupyter: the process has one working folder for all of them. */
     private static final String FOLDER = "meltbook.notebook.folder";
 
     private DataFolder() {}

@@ -12,6 +12,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
 import java.util.concurrent.Callable;
+import java.util.concurrent.CountDownLatch;
 import java.util.concurrent.TimeUnit;
 import org.meltbook.base.MeltbookException;
 import org.meltbook.kernel.Attachment;
@@ -27,8 +28,8 @@ import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
 /**
- * The program. Exit codes: 0 all is well; 1 a notebook failed, differs from what is stored, or is not tidy; 2 wrong use,
- * or something asked for could not be done at all.
+ * The program. Exit codes: 0 all is well; 1 a notebook failed, differs from what is stored, or is not tidy; 2 wrong
+ * use, or something asked for could not be done at all; 130 ended by Ctrl-C, with nothing half-written.
  */
 @Command(
         name = "meltbook",
@@ -45,6 +46,7 @@ import picocli.CommandLine.Parameters;
 public final class Main {
     private static final int DIFFERS = 1;
     private static final int CANNOT = 2;
+    /** How long, in ms, the end of the process waits for a stopped cell. */
     private static final long PATIENCE = 5_000;
 
     private final PrintStream out;
@@ -142,28 +144,32 @@ public final class Main {
             Plan plan = new Plan(into, stored.choice(), Duration.ofMillis(Math.round(limit * 1000)));
             List<Path> notebooks = Runner.notebooks(paths);
             Runner runner = new Runner(() -> JShellEvaluator.open(settings()), out);
-            Thread hook = stopOnSignal(runner);
-            List<RunResult> results = runner.run(notebooks, plan);
-            forget(hook);
-            return report(results, notebooks.size());
+            CountDownLatch done = new CountDownLatch(1);
+            Thread hook = stopOnSignal(runner, done);
+            try {
+                return report(runner.run(notebooks, plan), notebooks.size());
+            } finally {
+                done.countDown();
+                forget(hook);
+            }
         }
 
         private int report(List<RunResult> results, int asked) {
             List<String> problems = results.stream().flatMap(r -> r.problems().stream()).toList();
             problems.forEach(err::println);
             long good = results.stream().filter(RunResult::isGood).count();
+            boolean whole = results.stream().noneMatch(RunResult::isInterrupted) && results.size() == asked;
             out.println(good + " of " + asked + " notebooks " + (stored.check ? "ran and gave what is stored" : "ran")
-                    + "; see " + into.resolve("index.html"));
-            return problems.isEmpty() && results.size() == asked ? 0 : DIFFERS;
+                    + (whole ? "; see " + into.resolve("index.html") : "; the run was interrupted"));
+            return problems.isEmpty() && whole ? 0 : DIFFERS;
         }
 
         /** On Ctrl-C the running cell is stopped, so that the run can end by itself; nothing is left half-written. */
-        private static Thread stopOnSignal(Runner runner) {
-            Thread running = Thread.currentThread();
+        private static Thread stopOnSignal(Runner runner, CountDownLatch done) {
             Thread hook = new Thread(() -> {
                 runner.interrupt();
                 try {
-                    running.join(PATIENCE);
+                    done.await(PATIENCE, TimeUnit.MILLISECONDS);
                 } catch (InterruptedException e) {
                     Thread.currentThread().interrupt();
                 }

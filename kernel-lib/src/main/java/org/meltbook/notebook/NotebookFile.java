@@ -23,7 +23,7 @@ public final class NotebookFile {
     /**
      * The notebook in a file.
      *
-     * @throws NotebookException if it cannot be read, is not JSON, or not a notebook of format 4; one line names the file
+     * @throws NotebookException if it cannot be read, is not JSON, or no notebook of format 4; one line names the file
      */
     public static Notebook read(Path file) {
         return parse(text(file), file.toString());

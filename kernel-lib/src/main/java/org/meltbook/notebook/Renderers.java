@@ -18,8 +18,8 @@ import org.meltbook.units.Prediction;
 import tech.tablesaw.table.Relation;
 
 /**
- * How values show themselves in a notebook: exhibits, tables and predictions as HTML, figures and charts as pictures, each
- * with plain text beside it.
+ * How values show themselves in a notebook: exhibits, tables and predictions as HTML, figures and charts as pictures,
+ * each with plain text beside it.
  */
 public final class Renderers {
     private static final String PNG = "image/png";

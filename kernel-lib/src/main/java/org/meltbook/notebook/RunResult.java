@@ -11,9 +11,17 @@ import java.util.List;
  * @param status   the same in a few words, as the index shows it
  */
 public record RunResult(Path notebook, List<String> problems, String status) {
+    /** The status of a run that did not end by itself. */
+    static final String INTERRUPTED = "interrupted";
+
     /** Copies the list. */
     public RunResult {
         problems = List.copyOf(problems);
+    }
+
+    /** Whether the run was interrupted, so that nothing was written. */
+    public boolean isInterrupted() {
+        return status.equals(INTERRUPTED);
     }
 
     /** Whether all is well. */

@@ -109,7 +109,8 @@ public final class Runner {
         List<String> problems = new ArrayList<>();
         Notebook fresh = execute(file, stored, plan, problems);
         if (stopped) {
-            return new RunResult(file, List.of(file + ": interrupted, nothing was written for it"), "interrupted");
+            String problem = file + ": interrupted, nothing was written for it";
+            return new RunResult(file, List.of(problem), RunResult.INTERRUPTED);
         }
         String status = problems.isEmpty() ? "ran to its end" : "failed: " + withoutPath(problems.get(0), file);
         if (problems.isEmpty() && plan.stored() == Plan.Stored.CHECK) {

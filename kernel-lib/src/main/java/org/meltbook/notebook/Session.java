@@ -12,7 +12,7 @@ import org.meltbook.kernel.Evaluator;
 import org.meltbook.kernel.Outcome;
 import org.meltbook.kernel.Outlet;
 
-/** One evaluator with a clock beside it: a cell that takes too long is interrupted, and left behind if it does not stop. */
+/** An evaluator with a clock beside it: a cell that takes too long is interrupted, and left behind if it goes on. */
 final class Session implements AutoCloseable {
     private static final Duration GRACE = Duration.ofSeconds(10);
 

@@ -16,7 +16,8 @@ import org.meltbook.kernel.MimeBundle;
 
 /**
  * Makes a notebook read the same wherever and whenever it was run: each cell has an id that stays, cells that were run
- * count from 1, what differs from machine to machine is gone, printed text is in one piece. Tidying twice changes nothing.
+ * count from 1, what differs from machine to machine is gone, printed text is in one piece. Tidying twice changes
+ * nothing.
  */
 public final class Tidy {
     private static final Pattern VALID_ID = Pattern.compile("[A-Za-z0-9_-]{1,64}");
@@ -37,7 +38,8 @@ public final class Tidy {
         for (Notebook.Cell cell : notebook.cells()) {
             String id = id(cell, kept, taken);
             taken.add(id);
-            Optional<Integer> count = cell.isRunnable() && cell.count().isPresent() ? Optional.of(++run) : Optional.empty();
+            boolean counted = cell.isRunnable() && cell.count().isPresent();
+            Optional<Integer> count = counted ? Optional.of(++run) : Optional.empty();
             cells.add(cell.named(id).with(tidied(cell.extras())).with(count, outputs(cell.outputs(), count)));
         }
         return new Notebook(cells, metadata(notebook.metadata()));

@@ -16,7 +16,8 @@ import org.meltbook.base.RangeException;
  * <p>Active-set method of C. L. Lawson and R. J. Hanson, Solving Least Squares Problems, 1974, chapter 23 (from
  * memory). Each trial set of free unknowns is solved by Householder QR of its own columns, never by the normal
  * equations, so that the conditioning is that of A. At the optimum the gradient w = Aᵀ(b − A x) is zero for free
- * unknowns and not positive for those held at zero.
+ * unknowns and not positive for those held at zero. With many more rows than columns A and b are first brought to the
+ * triangle of one QR, which leaves all lengths and angles as they are and makes each trial cheaper.
  */
 public final class NonNegativeLeastSquares {
     private static final double EPSILON = Math.ulp(1.0);
@@ -65,7 +66,31 @@ public final class NonNegativeLeastSquares {
      */
     public static Solution solve(double[][] matrix, double[] target, Progress progress) {
         check(matrix, target);
-        return new NonNegativeLeastSquares(matrix, target).run(progress);
+        int columns = matrix[0].length;
+        if (matrix.length <= columns + 1) {
+            return new NonNegativeLeastSquares(matrix, target).run(progress);
+        }
+        double[][] triangle = triangle(matrix, target);
+        double[] last = new double[columns + 1];
+        for (int i = 0; i <= columns; i++) {
+            last[i] = triangle[i][columns];
+            triangle[i] = Arrays.copyOf(triangle[i], columns);
+        }
+        return new NonNegativeLeastSquares(triangle, last).run(progress);
+    }
+
+    /** The triangle R of the QR decomposition of [A b]: one row and column more than A has columns. */
+    private static double[][] triangle(double[][] matrix, double[] target) {
+        int columns = matrix[0].length;
+        double[][] both = new double[matrix.length][];
+        for (int i = 0; i < both.length; i++) {
+            both[i] = Arrays.copyOf(matrix[i], columns + 1);
+            both[i][columns] = target[i];
+        }
+        return new QRDecomposition(new Array2DRowRealMatrix(both, false))
+                .getR()
+                .getSubMatrix(0, columns, 0, columns)
+                .getData();
     }
 
     private static void check(double[][] matrix, double[] target) {

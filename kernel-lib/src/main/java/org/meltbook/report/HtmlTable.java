@@ -50,7 +50,8 @@ public final class HtmlTable {
                     .forEach(row -> html.append(line(rows.columns(), row)));
         }
         html.append("</tbody>\n</table>\n");
-        notes(rows, whole ? rows.size() : FIRST + LAST).forEach(note -> html.append("<p class=\"note\" style=\"font-size:.9em;margin:.2em .7em\">")
+        int shown = whole ? rows.size() : FIRST + LAST;
+        notes(rows, shown).forEach(note -> html.append("<p class=\"note\" style=\"font-size:.9em;margin:.2em .7em\">")
                 .append(Html.escape(note)).append("</p>\n"));
         return html.toString();
     }

@@ -17,7 +17,8 @@ final class MathMl {
     private static final Map<String, String> CHARACTERS = Map.of(
             "\u0307", "\u02D9", "\u0308", "\u00A8", "\u0302", "^", "\u0303", "~", "\u20D7", "\u2192", "-", "\u2212");
     private static final Set<String> FUNCTIONS = Set.of(
-            "sin", "cos", "tan", "sinh", "cosh", "tanh", "arctan", "ln", "log", "exp", "max", "min", "lim", "tr", "det");
+            "sin", "cos", "tan", "sinh", "cosh", "tanh", "arctan", "ln", "log", "exp", "max", "min", "lim",
+            "tr", "det");
     private static final Set<String> TALL = Set.of("mfrac", "mtable", "munder", "munderover", "msqrt", "mroot");
     private static final int PRIME = '\u2032';
     private static final String THIN = "0.167em";

@@ -53,8 +53,8 @@ public final class Page {
                 + "<meta http-equiv=\"Content-Security-Policy\" content=\"" + POLICY + "\">\n"
                 + "<meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n"
                 + "<meta name=\"color-scheme\" content=\"light dark\">\n"
-                + "<title>" + Html.escape(title) + "</title>\n<style>\n" + style(body.contains("<math")) + "</style>\n</head>\n<body>\n" + body
-                + "</body>\n</html>\n";
+                + "<title>" + Html.escape(title) + "</title>\n<style>\n" + style(body.contains("<math"))
+                + "</style>\n</head>\n<body>\n" + body + "</body>\n</html>\n";
     }
 
     private static String html(Block block, Markdown markdown) {

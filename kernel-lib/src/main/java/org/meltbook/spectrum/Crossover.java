@@ -3,9 +3,12 @@ package org.meltbook.spectrum;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.function.DoubleUnaryOperator;
+import java.util.stream.DoubleStream;
+import java.util.stream.IntStream;
 import org.apache.commons.math3.analysis.solvers.BrentSolver;
 import org.meltbook.base.Doubles;
 import org.meltbook.units.Prediction;
+import org.meltbook.units.Quantity;
 
 /**
  * Where storage and loss modulus are equal.
@@ -14,6 +17,40 @@ import org.meltbook.units.Prediction;
  * @param modulus   G′ = G″ there, in Pa
  */
 public record Crossover(Prediction frequency, Prediction modulus) {
+    /** The crossovers of a spectrum at angular frequencies in rad/s between {@code low} and {@code high}, rising. */
+    static List<Crossover> of(Refitted fit, double low, double high) {
+        if (!(high > low)) {
+            return List.of();
+        }
+        Doubles found = frequencies(fit.spectrum(), low, high);
+        if (found.isEmpty()) {
+            return List.of();
+        }
+        List<Doubles> again =
+                fit.again().stream().map(s -> frequencies(s, low, high)).toList();
+        return IntStream.range(0, found.size())
+                .mapToObj(place -> crossover(fit, found, again, place))
+                .toList();
+    }
+
+    private static Crossover crossover(Refitted fit, Doubles found, List<Doubles> again, int place) {
+        double at = found.at(place);
+        double modulus = fit.spectrum().storage(at);
+        double[] places = again.stream()
+                .mapToDouble(other -> other.size() == found.size() ? other.at(place) : Double.NaN)
+                .toArray();
+        Interval frequencies = Interval.about(at, DoubleStream.of(places));
+        Interval moduli = Interval.about(
+                modulus,
+                IntStream.range(0, places.length)
+                        .mapToDouble(k -> places[k] > 0 ? fit.again().get(k).storage(places[k]) : Double.NaN));
+        String name = found.size() == 1 ? "crossover" : "crossover " + (place + 1);
+        return new Crossover(
+                Prediction.of(
+                        name + " frequency", Quantity.ANGULAR_FREQUENCY, at, frequencies.low(), frequencies.high()),
+                Prediction.of(name + " modulus", Quantity.STORAGE_MODULUS, modulus, moduli.low(), moduli.high()));
+    }
+
     /**
      * Angular frequencies in rad/s between {@code low} and {@code high} where the moduli of a spectrum are equal,
      * rising.

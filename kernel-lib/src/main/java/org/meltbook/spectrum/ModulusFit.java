@@ -5,7 +5,6 @@ import java.util.Arrays;
 import java.util.List;
 import java.util.Random;
 import org.meltbook.base.Doubles;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 import org.meltbook.measure.Curve;
@@ -114,11 +113,17 @@ final class ModulusFit {
 
     /** Root mean square of the relative residuals. */
     double rootMeanSquare() {
-        double sum = 0;
-        for (double residual : residuals) {
-            sum += residual * residual;
-        }
-        return Math.sqrt(sum / residuals.length);
+        return Math.sqrt(sumOfSquares() / residuals.length);
+    }
+
+    /** Sum of the squared relative residuals. */
+    double sumOfSquares() {
+        return Arrays.stream(residuals).map(r -> r * r).sum();
+    }
+
+    /** Points less modes, one at least. */
+    int spare() {
+        return Math.max(1, residuals.length - spectrum.modes().size());
     }
 
     /**
@@ -127,8 +132,7 @@ final class ModulusFit {
      */
     List<RelaxationSpectrum> replicates(int count, long seed, Progress progress) {
         Random random = new Random(seed);
-        double spare = Math.max(1, residuals.length - spectrum.modes().size());
-        double widened = Math.sqrt(residuals.length / spare);
+        double widened = Math.sqrt((double) residuals.length / spare());
         List<RelaxationSpectrum> all = new ArrayList<>();
         for (int k = 0; k < count; k++) {
             progress.at(k, count, "spectra for the intervals");
@@ -143,23 +147,5 @@ final class ModulusFit {
             all.add(spectrum(solve(target, progress)));
         }
         return all;
-    }
-
-    /** Refuses points that are no moduli at a frequency. */
-    static Curve checked(Curve curve) {
-        String what = curve.y().quantity().label();
-        if (curve.size() < 3) {
-            throw new RangeException(
-                    "a spectrum needs three usable points of the " + what + " at least, found " + curve.size());
-        }
-        for (int i = 0; i < curve.size(); i++) {
-            if (!(curve.x().at(i) > 0 && curve.y().at(i) > 0)) {
-                throw new RangeException("usable point " + (i + 1) + " of the " + what + " is "
-                        + NumberText.of(curve.y().at(i)) + " Pa at "
-                        + NumberText.of(curve.x().at(i))
-                        + " rad/s: a spectrum needs both above zero; mark the row unusable to set it aside");
-            }
-        }
-        return curve;
     }
 }

@@ -223,6 +223,7 @@ public final class RelaxationSpectrum implements Exhibit {
                         meanRelaxationTime(),
                         instantaneousModulus())
                 .text("unit", List.of("Pa·s", "1/Pa", "Pa·s²", "s", "Pa"))
+                .note("Of a fitted spectrum these hold as far as the sweep reached: see what its fit says of them.")
                 .build();
         return List.of(modeRows().build(), sums);
     }

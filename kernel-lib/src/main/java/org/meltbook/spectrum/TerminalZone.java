@@ -1,13 +1,15 @@
 package org.meltbook.spectrum;
 
+import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
-import org.meltbook.measure.Curve;
 import org.meltbook.numeric.LogLogLine;
 
 /**
  * Whether a sweep reaches down to where the melt flows like a simple liquid: G″ grows with ω¹ and G′ with ω². Asked of
- * the measured points within half a decade of the lowest frequency of each curve, three points at least: slope of ln G″
- * of {@value #LOSS_SLOPE} or more and of ln G′ of {@value #STORAGE_SLOPE} or more (common practice, not a standard).
+ * the fitted moduli at the measured frequencies within half a decade of the lowest one of each curve, three points at
+ * least: all points of the sweep carry these slopes, so that they scatter ten times less than those of the few points
+ * themselves (measured). η₀ asks a slope of ln G″ of {@value #LOSS_SLOPE} or more; Jₑ⁰ asks of ln G′
+ * {@value #STORAGE_SLOPE} or more too (common practice, not a standard).
  *
  * @param lossSlope    d ln G″ / d ln ω at the low end
  * @param storageSlope d ln G′ / d ln ω at the low end
@@ -16,21 +18,44 @@ record TerminalZone(double lossSlope, double storageSlope) {
     static final double LOSS_SLOPE = 0.9;
     static final double STORAGE_SLOPE = 1.8;
 
-    static TerminalZone of(Curve storage, Curve loss) {
+    static TerminalZone of(RelaxationSpectrum spectrum, Moduli moduli) {
+        Doubles losses = moduli.loss().x().values();
+        Doubles storages = moduli.storage().x().values();
         return new TerminalZone(
-                LogLogLine.lowEnd(loss.x().values(), loss.y().values()).slope(),
-                LogLogLine.lowEnd(storage.x().values(), storage.y().values()).slope());
+                LogLogLine.lowEnd(losses, losses.map(spectrum::loss)).slope(),
+                LogLogLine.lowEnd(storages, storages.map(spectrum::storage)).slope());
     }
 
-    boolean reached() {
-        return lossSlope >= LOSS_SLOPE && storageSlope >= STORAGE_SLOPE;
+    /** Whether G″ carries η₀. */
+    boolean givesViscosity() {
+        return lossSlope >= LOSS_SLOPE;
     }
 
-    /** The slopes found and asked for. */
-    String words() {
-        return "at the lowest frequencies G″ grows with ω to the power " + NumberText.of(lossSlope, 3)
-                + " and G′ to the power "
-                + NumberText.of(storageSlope, 3) + " (" + NumberText.of(LOSS_SLOPE, 2) + " and "
-                + NumberText.of(STORAGE_SLOPE, 2) + " asked, 1 and 2 in the terminal zone)";
+    /** Whether G′ carries Jₑ⁰ too. */
+    boolean givesCompliance() {
+        return givesViscosity() && storageSlope >= STORAGE_SLOPE;
+    }
+
+    /** The verdict for a headline. */
+    String verdict() {
+        if (givesCompliance()) {
+            return "terminal zone reached";
+        }
+        return givesViscosity() ? "terminal zone reached by G″, NOT by G′" : "terminal zone NOT reached";
+    }
+
+    /** The slope of G″ found and asked for. */
+    String lossWords() {
+        return words("G″", lossSlope, LOSS_SLOPE, "1");
+    }
+
+    /** The slope of G′ found and asked for. */
+    String storageWords() {
+        return words("G′", storageSlope, STORAGE_SLOPE, "2");
+    }
+
+    private static String words(String symbol, double slope, double asked, String terminal) {
+        return "at the lowest frequencies " + symbol + " grows with ω to the power " + NumberText.of(slope, 3) + " ("
+                + NumberText.of(asked, 2) + " asked, " + terminal + " in the terminal zone)";
     }
 }

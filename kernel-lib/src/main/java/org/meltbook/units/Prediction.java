@@ -2,7 +2,6 @@ package org.meltbook.units;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Locale;
 import java.util.Objects;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
@@ -34,7 +33,8 @@ public final class Prediction {
     private final Standing standing;
     private final List<String> cautions;
 
-    private Prediction(String name, Quantity quantity, double[] valueLowHigh, Standing standing, List<String> cautions) {
+    private Prediction(
+            String name, Quantity quantity, double[] valueLowHigh, Standing standing, List<String> cautions) {
         this.name = Objects.requireNonNull(name, "name");
         this.quantity = Objects.requireNonNull(quantity, "quantity");
         this.value = valueLowHigh[0];
@@ -55,23 +55,23 @@ public final class Prediction {
         return new Prediction(name, quantity, new double[] {value, low, high}, Standing.WITHIN_WINDOW, List.of());
     }
 
-    /** A number computed outside the tested window; {@code why} says which end was left, and by how much. */
-    public static Prediction extrapolated(
-            String name, Quantity quantity, double value, double low, double high, String why) {
-        return new Prediction(name, quantity, new double[] {value, low, high}, Standing.EXTRAPOLATED, List.of(why));
-    }
-
     /** A number of which the data only give a lower bound in SI; {@code why} says what was not reached. */
     public static Prediction atLeast(String name, Quantity quantity, double bound, String why) {
         return new Prediction(
-                name, quantity, new double[] {Double.NaN, bound, Double.POSITIVE_INFINITY}, Standing.AT_LEAST,
+                name,
+                quantity,
+                new double[] {Double.NaN, bound, Double.POSITIVE_INFINITY},
+                Standing.AT_LEAST,
                 List.of(why));
     }
 
     /** A number of which the data only give an upper bound in SI; {@code why} says what was not reached. */
     public static Prediction atMost(String name, Quantity quantity, double bound, String why) {
         return new Prediction(
-                name, quantity, new double[] {Double.NaN, Double.NEGATIVE_INFINITY, bound}, Standing.AT_MOST,
+                name,
+                quantity,
+                new double[] {Double.NaN, Double.NEGATIVE_INFINITY, bound},
+                Standing.AT_MOST,
                 List.of(why));
     }
 
@@ -79,6 +79,17 @@ public final class Prediction {
     public static Prediction undetermined(String name, Quantity quantity, String why) {
         return new Prediction(
                 name, quantity, new double[] {Double.NaN, Double.NaN, Double.NaN}, Standing.UNDETERMINED, List.of(why));
+    }
+
+    /**
+     * The same number as one computed outside the tested window; {@code why} says which end was left, and by how much.
+     *
+     * @throws RangeException if there is no number, only a bound or nothing
+     */
+    public Prediction extrapolated(String why) {
+        List<String> more = new ArrayList<>(cautions);
+        more.add(why);
+        return new Prediction(name, quantity, new double[] {value(), low, high}, Standing.EXTRAPOLATED, more);
     }
 
     /** The same number with one more thing to mind. */
@@ -139,16 +150,17 @@ public final class Prediction {
     @Override
     public String toString() {
         String unit = quantity.siUnit().equals("1") ? "" : " " + quantity.siUnit();
+        String symbol = quantity.symbol().equals("–") ? "" : " " + quantity.symbol();
         String number =
                 switch (standing) {
-                    case AT_LEAST -> "at least " + NumberText.of(low) + unit;
-                    case AT_MOST -> "at most " + NumberText.of(high) + unit;
-                    case UNDETERMINED -> "not determined";
-                    default -> NumberText.of(value) + unit + interval();
+                    case AT_LEAST -> " at least " + NumberText.of(low) + unit;
+                    case AT_MOST -> " at most " + NumberText.of(high) + unit;
+                    case UNDETERMINED -> " not determined";
+                    default -> symbol + " = " + NumberText.of(value) + unit + interval();
                 };
         String mark = standing == Standing.EXTRAPOLATED ? " (extrapolated)" : "";
         String minding = cautions.isEmpty() ? "" : ": " + String.join("; ", cautions);
-        return String.format(Locale.ROOT, "%s %s = %s%s%s", name, quantity.symbol(), number, mark, minding);
+        return name + number + mark + minding;
     }
 
     private String interval() {

@@ -18,6 +18,7 @@ import org.meltbook.fit.PredictionRows;
 import org.meltbook.fit.Problem;
 import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
+import org.meltbook.numeric.LogLogLine;
 import org.meltbook.units.Prediction;
 import org.meltbook.units.Quantity;
 
@@ -27,10 +28,12 @@ import org.meltbook.units.Quantity;
  * <p>The zero-shear viscosity is given as a plain number only if the plateau was measured. Three things are asked of
  * the points within half a decade of the lowest rate (three points at least); the limits are common practice, not a
  * standard: the measured slope d ln η / d ln γ̇ lies within 0.1 of zero; the law at the lowest rate is within 5 % of
- * its limit at rate zero; the law lies within 5 % of the measured mean. Otherwise the mean of these points is a lower
- * bound, if the viscosity does not rise with the rate there.
+ * its limit at rate zero; the law lies within 5 % of the measured mean. Otherwise the lowest of these points is a lower
+ * bound, if the viscosity does not rise with the rate there; if the law meets these points, its limit stands beside the
+ * bound, marked as extrapolated.
  */
 public final class ViscosityFit implements Exhibit {
+    private static final String ZERO_SHEAR = "zero-shear viscosity";
     private static final double LEVEL_SLOPE = 0.1;
     private static final double NEAR = 0.05;
     private static final int LINE_POINTS = 121;
@@ -89,20 +92,48 @@ public final class ViscosityFit implements Exhibit {
 
     /** The zero-shear viscosity, a bound of it, or neither, and why. */
     public Prediction zeroShearViscosity() {
-        CurveShape low = CurveShape.of(fit.problem().x(), fit.problem().y()).lowEnd();
-        double lowest = low.rates().at(0);
+        CurveShape low = lowEnd();
         double slope = low.slope();
-        String name = "zero-shear viscosity";
         if (slope > LEVEL_SLOPE) {
             return Prediction.undetermined(
-                    name,
+                    ZERO_SHEAR,
                     Quantity.VISCOSITY,
-                    "the viscosity rises with the rate at the low end, " + "with slope " + NumberText.of(slope, 2));
+                    "the viscosity rises with the rate at the low end, with slope " + NumberText.of(slope, 2));
         }
-        String reason = refusal(low, lowest, slope);
-        if (!reason.isEmpty()) {
-            return Prediction.atLeast(name, Quantity.VISCOSITY, low.mean(), reason);
+        String reason = refusal(low);
+        if (reason.isEmpty()) {
+            return limit(ZERO_SHEAR);
         }
+        String beside = extrapolatedLimit()
+                .map(limit -> "; the law's limit is " + number(limit) + " (extrapolated)")
+                .orElse("");
+        return Prediction.atLeast(
+                ZERO_SHEAR,
+                Quantity.VISCOSITY,
+                low.viscosities().smallest(),
+                reason + "; the bound is the lowest of the " + low.rates().size() + " points at the low end" + beside);
+    }
+
+    /**
+     * The fitted law's limit at rate zero, extrapolated, where the points give only a bound; empty where the limit is
+     * the zero-shear viscosity itself, or the law has none or misses the points at the low end.
+     */
+    public Optional<Prediction> extrapolatedLimit() {
+        CurveShape low = lowEnd();
+        boolean plain = refusal(low).isEmpty();
+        boolean meets = Math.abs(miss(low)) <= NEAR && low.slope() <= LEVEL_SLOPE;
+        if (plain || !meets || !Double.isFinite(law.zeroRateLimit())) {
+            return Optional.empty();
+        }
+        return Optional.of(limit(ZERO_SHEAR + " of the fitted law")
+                .extrapolated("another law that fits as well may have another limit"));
+    }
+
+    private CurveShape lowEnd() {
+        return CurveShape.of(fit.problem().x(), fit.problem().y()).lowEnd();
+    }
+
+    private Prediction limit(String name) {
         double limit = law.zeroRateLimit();
         Optional<Estimate> eta0 =
                 fit.estimates().stream().filter(e -> e.value() == limit).findFirst();
@@ -114,28 +145,44 @@ public final class ViscosityFit implements Exhibit {
                 eta0.map(Estimate::high).orElse(Double.NaN));
     }
 
-    private String refusal(CurveShape low, double lowest, double slope) {
-        String where = " at the lowest rate, " + NumberText.of(lowest) + " 1/s";
+    private static String number(Prediction viscosity) {
+        String interval = Double.isNaN(viscosity.low())
+                ? ""
+                : " (95 %: " + NumberText.of(viscosity.low()) + " to " + NumberText.of(viscosity.high()) + ")";
+        return NumberText.of(viscosity.value()) + " Pa·s" + interval;
+    }
+
+    private String refusal(CurveShape low) {
         double limit = law.zeroRateLimit();
         if (!Double.isFinite(limit)) {
             return "the " + family.name() + " has no plateau";
         }
+        double lowest = low.rates().at(0);
+        String where = " at the lowest rate, " + NumberText.of(lowest) + " 1/s";
+        double slope = low.slope();
         if (!(Math.abs(slope) <= LEVEL_SLOPE)) {
             return "no plateau was reached: the measured slope d ln η / d ln γ̇ is still " + NumberText.of(slope, 2)
                     + where + " (" + NumberText.of(LEVEL_SLOPE, 1) + " allowed)";
         }
         double share = law.at(lowest) / limit;
         if (!(Math.abs(share - 1) <= NEAR)) {
-            return "no plateau was reached: the fitted law is at " + NumberText.of(100 * share, 2) + " % of its limit"
+            return "no plateau was reached: the fitted law is at " + NumberText.of(100 * share, 3) + " % of its limit"
                     + where + " (95 % asked)";
         }
-        double miss =
-                low.rates().stream().map(law::at).map(Math::log).average().orElse(Double.NaN) - Math.log(low.mean());
+        double miss = miss(low);
         if (!(Math.abs(miss) <= NEAR)) {
-            return "the " + family.name() + " misses the points at the low end by " + NumberText.of(100 * miss, 2)
-                    + " % on average (5 % allowed)";
+            return "the " + family.name() + " misses the points at the low end: it lies "
+                    + NumberText.of(100 * Math.abs(miss), 2) + " % " + (miss > 0 ? "above" : "below")
+                    + " them on average (5 % allowed)";
         }
         return "";
+    }
+
+    /** Geometric mean of law / measured − 1 at the low end. */
+    private double miss(CurveShape low) {
+        double law =
+                LogLogLine.through(low.rates(), low.rates().map(this.law::at)).mean();
+        return law / low.mean() - 1;
     }
 
     @Override
@@ -148,7 +195,19 @@ public final class ViscosityFit implements Exhibit {
         return capital(family.name()) + (sample.isEmpty() ? "" : " for " + sample) + ": " + String.join(", ", values)
                 + "; " + fit.residuals().size() + " points used, "
                 + curve.viscosity().setAside() + " set aside, "
-                + fit.spread() + (fit.status() == Fit.Status.CONVERGED ? "" : "; NOT converged") + ".";
+                + fit.spread() + (fit.status() == Fit.Status.CONVERGED ? "" : "; NOT converged") + plateau() + ".";
+    }
+
+    private String plateau() {
+        Prediction zeroShear = zeroShearViscosity();
+        return switch (zeroShear.standing()) {
+            case AT_LEAST -> (extrapolatedLimit().isPresent()
+                            ? "; this η₀ is extrapolated, the points give at least "
+                            : "; the points give a " + ZERO_SHEAR + " of at least ")
+                    + NumberText.of(zeroShear.low()) + " Pa·s";
+            case UNDETERMINED -> "; " + ZERO_SHEAR + " not determined";
+            default -> "";
+        };
     }
 
     private static String capital(String text) {
@@ -159,7 +218,9 @@ public final class ViscosityFit implements Exhibit {
     public List<Rows> rows() {
         List<Rows> all = new ArrayList<>();
         all.add(fit.rows().get(0));
-        all.add(PredictionRows.of("What the fit says of the plateau", List.of(zeroShearViscosity())));
+        List<Prediction> plateau = new ArrayList<>(List.of(zeroShearViscosity()));
+        extrapolatedLimit().ifPresent(plateau::add);
+        all.add(PredictionRows.of("What the fit says of the plateau", plateau));
         all.addAll(fit.rows().subList(1, fit.rows().size()));
         return List.copyOf(all);
     }
@@ -206,7 +267,8 @@ public final class ViscosityFit implements Exhibit {
         }
         int aside = curve.viscosity().setAside();
         if (aside > 0) {
-            all.add(aside + " of " + curve.viscosity().size() + " points are marked unusable and took no part");
+            all.add(aside + " of " + curve.viscosity().size() + (aside == 1 ? " points is" : " points are")
+                    + " marked unusable and took no part");
         }
         return List.copyOf(all);
     }

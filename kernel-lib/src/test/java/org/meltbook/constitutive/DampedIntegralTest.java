@@ -130,6 +130,13 @@ class DampedIntegralTest {
         assertTrue(refused.getMessage().contains("found reversal"));
     }
 
+    @Test
+    void says_that_it_has_no_second_normal_stress_and_that_its_damping_is_for_shear() {
+        String limits = String.join("; ", MODEL.limits());
+        assertTrue(limits.contains("N₂ = 0"), limits);
+        assertTrue(limits.contains("n holds for shear only"), limits);
+    }
+
     @ParameterizedTest
     @ValueSource(doubles = {-1, Double.NaN, Double.POSITIVE_INFINITY})
     void rejects_a_damping(double bad) {

@@ -1,6 +1,7 @@
 package org.meltbook.constitutive;
 
 import static org.junit.jupiter.api.Assertions.assertEquals;
+import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
@@ -135,6 +136,28 @@ class UpperConvectedMaxwellTest {
         assertThrows(
                 RangeException.class,
                 () -> ONE.stress(new Pieces(shear, shear, List.of(Component.YY, Component.XX)), -1));
+    }
+
+    /**
+     * Against the damped integral model of the published melt, n = 0.143. The damping enters with n λ γ̇, so the slowest
+     * modes, which carry N₁ but little of η, go first: neither departure waits for Wi = 1.
+     */
+    @Test
+    void its_limits_name_the_rates_where_melts_depart_from_it() {
+        double rate = 1 / MELT.meanRelaxationTime();
+        SteadyShearResponse damped = new DampedIntegral(MELT, 0.143).steadyShear(Doubles.of(0.05 * rate, 0.3 * rate));
+        SteadyShearResponse maxwell = MODEL.steadyShear(damped.rates());
+        assertEquals(
+                -0.12,
+                damped.firstNormalStressCoefficient().at(0)
+                                / maxwell.firstNormalStressCoefficient().at(0)
+                        - 1,
+                0.005);
+        assertEquals(-0.07, damped.viscosity().at(1) / maxwell.viscosity().at(1) - 1, 0.005);
+        String limits = String.join("; ", MODEL.limits());
+        assertTrue(limits.contains("N₁ from Wi ≈ 0.05 on"), limits);
+        assertTrue(limits.contains("(12 % below the model), η from Wi ≈ 0.3 on"), limits);
+        assertFalse(limits.contains("Wi = 1"), limits);
     }
 
     @ParameterizedTest

@@ -8,11 +8,16 @@ import java.util.ArrayList;
 import java.util.Collections;
 import java.util.List;
 import java.util.Random;
+import java.util.function.Predicate;
+import java.util.function.Supplier;
+import java.util.stream.Stream;
+import org.apache.commons.math3.stat.StatUtils;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.InterruptedComputation;
+import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
 import org.meltbook.measure.Conditions;
 import org.meltbook.measure.Curve;
@@ -57,7 +62,7 @@ class SpectrumFitTest {
         SpectrumFit fit = SpectrumFit.of(made(1e-5, 1e3, 80));
         assertEquals(51063.7, fit.zeroShearViscosity().value(), 0.01 * 51063.7);
         assertEquals(1.15017e-3, fit.recoverableCompliance().value(), 0.03 * 1.15017e-3);
-        assertTrue(fit.headline().endsWith("terminal zone reached."));
+        assertTrue(fit.headline().contains("terminal zone reached; η₀ = "), fit.headline());
     }
 
     @Test
@@ -71,30 +76,112 @@ class SpectrumFitTest {
         }
     }
 
+    /** A sweep of a spectrum at five points a decade up to 1000 rad/s, with normal scatter of the logarithms. */
+    private static FrequencySweep scattered(RelaxationSpectrum melt, double low, double scatter, Random random) {
+        Doubles frequencies = Doubles.logSpaced(low, 1e3, 1 + (int) Math.round(5 * Math.log10(1e3 / low)));
+        return sweep(
+                frequencies,
+                frequencies.map(w -> melt.storage(w) * Math.exp(scatter * random.nextGaussian())),
+                frequencies.map(w -> melt.loss(w) * Math.exp(scatter * random.nextGaussian())));
+    }
+
+    private static List<SpectrumFit> fits(int count, Supplier<FrequencySweep> sweeps) {
+        return Stream.generate(sweeps).limit(count).map(SpectrumFit::of).toList();
+    }
+
+    /** Log-normal in λ. */
+    private static RelaxationSpectrum smooth() {
+        Doubles times = Doubles.logSpaced(1e-6, 100, 121);
+        return RelaxationSpectrum.of(
+                times.map(t -> 4000 * Math.exp(-0.5 * Math.pow((Math.log10(t) + 2.5) / 1.5, 2))), times);
+    }
+
     /**
-     * Sixty sweeps with 3 % scatter from a spectrum that is log-normal in λ; nominal 95 %, found 85 % or more
-     * (seeded).
+     * Sixty sweeps with 3 % scatter (seeded); nominal 95 %, found 85 % or more. Each modulus alone would give η₀ with a
+     * deviation of 4 % and 2.6 % too high; both together have 0.6 % and no bias beyond it.
      */
     @Test
-    void intervals_hold_the_truth_about_as_often_as_they_say() {
-        Doubles times = Doubles.logSpaced(1e-6, 100, 121);
-        RelaxationSpectrum smooth = RelaxationSpectrum.of(
-                times.map(t -> 4000 * Math.exp(-0.5 * Math.pow((Math.log10(t) + 2.5) / 1.5, 2))), times);
+    void intervals_hold_the_truth_about_as_often_as_they_say_and_both_moduli_make_them_narrow() {
+        RelaxationSpectrum smooth = smooth();
         double crossover = Crossover.frequencies(smooth, 0.01, 1e4).at(0);
-        Doubles frequencies = Doubles.logSpaced(1e-3, 1e3, 40);
         Random random = new Random(5);
-        int viscosities = 0;
-        int crossovers = 0;
-        for (int k = 0; k < 60; k++) {
-            SpectrumFit fit = SpectrumFit.of(sweep(
-                    frequencies,
-                    frequencies.map(w -> smooth.storage(w) * Math.exp(0.03 * random.nextGaussian())),
-                    frequencies.map(w -> smooth.loss(w) * Math.exp(0.03 * random.nextGaussian()))));
-            viscosities += holds(fit.zeroShearViscosity(), smooth.zeroShearViscosity()) ? 1 : 0;
-            crossovers += holds(fit.crossovers().get(0).frequency(), crossover) ? 1 : 0;
+        List<SpectrumFit> fits = fits(60, () -> scattered(smooth, 1e-3, 0.03, random));
+        atLeast(51, fits, fit -> holds(fit.zeroShearViscosity(), smooth.zeroShearViscosity()));
+        atLeast(51, fits, fit -> holds(fit.recoverableCompliance(), smooth.recoverableCompliance()));
+        atLeast(51, fits, fit -> holds(fit.crossovers().get(0).frequency(), crossover));
+        double[] errors = fits.stream()
+                .mapToDouble(fit -> fit.zeroShearViscosity().value() / smooth.zeroShearViscosity() - 1)
+                .toArray();
+        assertEquals(0, StatUtils.mean(errors), 0.003);
+        assertTrue(Math.sqrt(StatUtils.variance(errors)) < 0.01, "deviation of η₀ " + StatUtils.variance(errors));
+        assertTrue(fits.stream()
+                .allMatch(fit -> fit.zeroShearViscosity().cautions().isEmpty()));
+    }
+
+    private static void atLeast(int count, List<SpectrumFit> fits, Predicate<SpectrumFit> fulfilled) {
+        long found = fits.stream().filter(fulfilled).count();
+        assertTrue(found >= count, "held " + found + " times of " + fits.size());
+    }
+
+    /**
+     * At 2e-3 rad/s G″ of the melt has come within 3 % of η₀ω while G′ is still at three quarters of its limit: slopes
+     * 0.93 and 1.7. A slope through the four lowest points would scatter by 0.03.
+     */
+    @Test
+    void a_storage_modulus_short_of_its_terminal_zone_does_not_refuse_the_viscosity_nor_does_scatter() {
+        Random random = new Random(3);
+        for (SpectrumFit fit : fits(20, () -> scattered(MELT, 2e-3, 0.02, random))) {
+            assertEquals(
+                    Prediction.Standing.WITHIN_WINDOW, fit.zeroShearViscosity().standing());
+            assertEquals(51063.7, fit.zeroShearViscosity().value(), 0.03 * 51063.7);
+            assertEquals(
+                    Prediction.Standing.AT_LEAST, fit.recoverableCompliance().standing());
+            assertTrue(fit.headline().contains("reached by G″, NOT by G′"), fit.headline());
         }
-        assertTrue(viscosities >= 49, "zero-shear viscosity held " + viscosities + " times of 60");
-        assertTrue(crossovers >= 49, "crossover held " + crossovers + " times of 60");
+    }
+
+    /** The slowest mode of the melt has λ = 1000 s: a window that ends at 8e-4 rad/s cuts its grid off just there. */
+    @Test
+    void the_interval_of_the_compliance_sees_the_end_of_the_grid() {
+        Random random = new Random(8);
+        List<SpectrumFit> fits = fits(20, () -> scattered(MELT, 8e-4, 0.02, random)).stream()
+                .filter(fit -> fit.recoverableCompliance().hasValue())
+                .toList();
+        assertTrue(fits.size() >= 10, fits.size() + " plain compliances");
+        atLeast(
+                (int) Math.ceil(0.85 * fits.size()),
+                fits,
+                fit -> holds(fit.recoverableCompliance(), MELT.recoverableCompliance()));
+    }
+
+    @Test
+    void a_bound_from_scattered_points_leaves_room_for_their_scatter() {
+        Random random = new Random(4);
+        double low = 3e-3;
+        for (SpectrumFit fit : fits(10, () -> scattered(MELT, low, 0.05, random))) {
+            double fitted = fit.spectrum().complexViscosity(low);
+            assertEquals(Prediction.Standing.AT_LEAST, fit.zeroShearViscosity().standing());
+            assertTrue(fit.zeroShearViscosity().low() < fitted);
+            assertTrue(fit.zeroShearViscosity().low() > 0.9 * fitted);
+        }
+    }
+
+    @Test
+    void a_bound_has_the_extrapolated_limit_of_the_spectrum_beside_it() {
+        SpectrumFit fit = SpectrumFit.of(made(3e-3, 1e3, 40));
+        double limit = fit.spectrum().zeroShearViscosity();
+        assertEquals(2, fit.extrapolatedLimits().size());
+        assertEquals(
+                Prediction.Standing.EXTRAPOLATED,
+                fit.extrapolatedLimits().get(0).standing());
+        assertEquals(limit, fit.extrapolatedLimits().get(0).value());
+        String words = NumberText.of(limit) + " Pa·s";
+        assertTrue(fit.headline().contains(words + ", extrapolated"), fit.headline());
+        assertTrue(fit.zeroShearViscosity().toString().contains(words + " (extrapolated)"), fit.toString());
+        assertEquals(
+                NumberText.of(limit) + " (extrapolated)",
+                fit.rows().get(0).column("value").text(2));
+        assertTrue(SpectrumFit.of(made(1e-5, 1e3, 80)).extrapolatedLimits().isEmpty());
     }
 
     private static boolean holds(Prediction prediction, double truth) {
