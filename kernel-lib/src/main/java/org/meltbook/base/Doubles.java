@@ -107,6 +107,7 @@ public final class Doubles {
         for (int i = 0; i < shown; i++) {
             text.append(i == 0 ? "" : ", ").append(NumberText.of(values[i]));
         }
-        return text.append(shown < values.length ? ", … " + values.length + " in all]" : "]").toString();
+        return text.append(shown < values.length ? ", … " + values.length + " in all]" : "]")
+                .toString();
     }
 }

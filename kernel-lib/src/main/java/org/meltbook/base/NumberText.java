@@ -31,7 +31,8 @@ public final class NumberText {
         BigDecimal rounded = new BigDecimal(value).round(new MathContext(digits, RoundingMode.HALF_EVEN));
         int exponent = rounded.precision() - rounded.scale() - 1;
         if (exponent >= -3 && exponent < 6) {
-            return minus(rounded.setScale(Math.max(0, digits - 1 - exponent), RoundingMode.HALF_EVEN).toPlainString());
+            return minus(rounded.setScale(Math.max(0, digits - 1 - exponent), RoundingMode.HALF_EVEN)
+                    .toPlainString());
         }
         BigDecimal mantissa = rounded.movePointLeft(exponent).setScale(digits - 1, RoundingMode.HALF_EVEN);
         return minus(mantissa.toPlainString()) + "×10" + raised(exponent);

@@ -37,7 +37,8 @@ final class AxisPainter {
         styler.setPlotMargin((int) Math.ceil(below));
         double above = chart.getTitle().isBlank()
                 ? 0
-                : TexRenderer.getBounds(chart.getTitle(), styler.getChartTitleFont()).getHeight()
+                : TexRenderer.getBounds(chart.getTitle(), styler.getChartTitleFont())
+                                .getHeight()
                         + 2 * styler.getChartTitlePadding();
         double plotHeight =
                 chart.getHeight() - 2 * styler.getChartPadding() - above - styler.getPlotMargin() - legendHeight;

@@ -89,7 +89,9 @@ public final class Drawing {
     }
 
     private static XYSeries series(XYChart chart, Track track) {
-        String name = track.layer().name().isBlank() ? "layer " + (track.index() + 1) : track.layer().name();
+        String name = track.layer().name().isBlank()
+                ? "layer " + (track.index() + 1)
+                : track.layer().name();
         String unique = name;
         for (int i = 2; chart.getSeries(unique) != null; i++) {
             unique = name + " (" + i + ")";

@@ -85,7 +85,9 @@ final class FigureLegend extends Legend_Marker<XYStyler, XYSeries> {
         if (!chart.getStyler().isLegendVisible()) {
             return entries;
         }
-        long count = chart.getSeriesCollection().stream().filter(XYSeries::isShowInLegend).count();
+        long count = chart.getSeriesCollection().stream()
+                .filter(XYSeries::isShowInLegend)
+                .count();
         double widest = (count > FEW ? WIDEST_OF_MANY : WIDEST) * chart.getWidth();
         for (XYSeries series : chart.getSeriesCollection()) {
             Entry last = entries.isEmpty() ? null : entries.get(entries.size() - 1);
@@ -116,8 +118,10 @@ final class FigureLegend extends Legend_Marker<XYStyler, XYSeries> {
 
     private double[] widths(List<Entry> entries, int columns) {
         double[] widths = new double[columns];
-        IntStream.range(0, entries.size()).forEach(i -> widths[i % columns] =
-                Math.max(widths[i % columns], GLYPH + GLYPH_GAP + Lettering.width(entries.get(i).label(), font())));
+        IntStream.range(0, entries.size())
+                .forEach(i -> widths[i % columns] = Math.max(
+                        widths[i % columns],
+                        GLYPH + GLYPH_GAP + Lettering.width(entries.get(i).label(), font())));
         return widths;
     }
 

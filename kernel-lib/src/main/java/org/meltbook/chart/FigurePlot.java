@@ -31,9 +31,8 @@ final class FigurePlot extends Plot_XY<XYStyler, XYSeries> {
 
     @Override
     public void paint(Graphics2D g) {
-        List<XYSeries> enabled = chart.getSeriesCollection().stream()
-                .filter(XYSeries::isEnabled)
-                .toList();
+        List<XYSeries> enabled =
+                chart.getSeriesCollection().stream().filter(XYSeries::isEnabled).toList();
         Color background = chart.getStyler().getPlotBackgroundColor();
         try {
             paintOnly(List.of(), enabled, g);

@@ -69,7 +69,8 @@ public final class Png {
                         .thenComparing(Comparator.naturalOrder()))
                 .limit(PALETTE)
                 .toList();
-        double covered = frequent.stream().mapToInt(colour -> counts.get(colour)[0]).sum();
+        double covered =
+                frequent.stream().mapToInt(colour -> counts.get(colour)[0]).sum();
         return covered < MOST_PIXELS * pixels.length ? image : indexed(image, pixels, frequent);
     }
 
@@ -83,8 +84,7 @@ public final class Png {
 
     private static BufferedImage indexed(BufferedImage image, int[] pixels, List<Integer> palette) {
         int[] colours = palette.stream().mapToInt(colour -> colour | 0xFF000000).toArray();
-        IndexColorModel model =
-                new IndexColorModel(8, colours.length, colours, 0, false, -1, DataBuffer.TYPE_BYTE);
+        IndexColorModel model = new IndexColorModel(8, colours.length, colours, 0, false, -1, DataBuffer.TYPE_BYTE);
         BufferedImage indexed =
                 new BufferedImage(image.getWidth(), image.getHeight(), BufferedImage.TYPE_BYTE_INDEXED, model);
         byte[] bytes = ((DataBufferByte) indexed.getRaster().getDataBuffer()).getData();

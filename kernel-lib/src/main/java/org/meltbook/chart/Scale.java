@@ -57,9 +57,7 @@ record Scale(double min, double max, boolean logarithmic) {
 
     /** Where a number lies, 0 at {@code min} and 1 at {@code max}. */
     double fraction(double value) {
-        return logarithmic
-                ? (Math.log10(value) - Math.log10(min)) / decades()
-                : (value - min) / (max - min);
+        return logarithmic ? (Math.log10(value) - Math.log10(min)) / decades() : (value - min) / (max - min);
     }
 
     /** How many powers of ten a logarithmic axis shows. */

@@ -25,15 +25,30 @@ final class Tally {
      */
     List<String> sentences(boolean nothing) {
         List<String> sentences = new ArrayList<>();
-        add(sentences, pointsAtEdge, " point at or below zero is marked at the edge.",
+        add(
+                sentences,
+                pointsAtEdge,
+                " point at or below zero is marked at the edge.",
                 " points at or below zero are marked at the edge.");
-        add(sentences, pointsOutOfRange, " point is infinite or too large to be drawn.",
+        add(
+                sentences,
+                pointsOutOfRange,
+                " point is infinite or too large to be drawn.",
                 " points are infinite or too large to be drawn.");
-        add(sentences, barsCut, " error bar reaches beyond the axis and is cut at the edge.",
+        add(
+                sentences,
+                barsCut,
+                " error bar reaches beyond the axis and is cut at the edge.",
                 " error bars reach beyond the axis and are cut at the edge.");
-        add(sentences, lineValuesLeftOut, " value of a line cannot be shown on the axes and leaves a gap.",
+        add(
+                sentences,
+                lineValuesLeftOut,
+                " value of a line cannot be shown on the axes and leaves a gap.",
                 " values of lines cannot be shown on the axes and leave gaps.");
-        add(sentences, bandValuesCut, " place of a band reaches beyond the axes and is cut there.",
+        add(
+                sentences,
+                bandValuesCut,
+                " place of a band reaches beyond the axes and is cut there.",
                 " places of bands reach beyond the axes and are cut there.");
         if (nothing) {
             sentences.add("There is no point that can be drawn.");

@@ -124,7 +124,9 @@ final class Ticks {
     private List<Tick> steps(BigDecimal step, boolean labelled) {
         List<Tick> ticks = new ArrayList<>();
         BigDecimal largest = new BigDecimal(Math.max(Math.abs(scale.min()), Math.abs(scale.max())));
-        BigDecimal value = new BigDecimal(scale.min()).divide(step, 0, RoundingMode.CEILING).multiply(step);
+        BigDecimal value = new BigDecimal(scale.min())
+                .divide(step, 0, RoundingMode.CEILING)
+                .multiply(step);
         BigDecimal end = new BigDecimal(scale.max());
         for (; value.compareTo(end) <= 0; value = value.add(step)) {
             ticks.add(new Tick(value.doubleValue(), labelled ? stepLabel(value, step, largest) : ""));
@@ -142,7 +144,8 @@ final class Ticks {
             BigDecimal mantissa = value.movePointLeft(order).setScale(digits, RoundingMode.HALF_EVEN);
             return minus(mantissa.toPlainString()) + "×10" + raised(order);
         }
-        return minus(value.setScale(Math.max(0, -order(step)), RoundingMode.HALF_EVEN).toPlainString());
+        return minus(value.setScale(Math.max(0, -order(step)), RoundingMode.HALF_EVEN)
+                .toPlainString());
     }
 
     private static int order(BigDecimal value) {
@@ -156,9 +159,10 @@ final class Ticks {
         }
         for (int i = 1; i < ticks.size(); i++) {
             double gap = length
-                    * (scale.fraction(ticks.get(i).value()) - scale.fraction(ticks.get(i - 1).value()));
-            double extents =
-                    extent.applyAsDouble(ticks.get(i).label()) + extent.applyAsDouble(ticks.get(i - 1).label());
+                    * (scale.fraction(ticks.get(i).value())
+                            - scale.fraction(ticks.get(i - 1).value()));
+            double extents = extent.applyAsDouble(ticks.get(i).label())
+                    + extent.applyAsDouble(ticks.get(i - 1).label());
             if (gap < ROOM * extents / 2) {
                 return false;
             }

@@ -78,17 +78,26 @@ public final class Figure {
         }
         return Rows.titled(title)
                 .text("layer", names)
-                .numbers(x.label(), x.unit(), points.stream().mapToDouble(p -> p[0]).toArray())
-                .numbers(y.label(), y.unit(), points.stream().mapToDouble(p -> p[1]).toArray())
+                .numbers(
+                        x.label(),
+                        x.unit(),
+                        points.stream().mapToDouble(p -> p[0]).toArray())
+                .numbers(
+                        y.label(),
+                        y.unit(),
+                        points.stream().mapToDouble(p -> p[1]).toArray())
                 .numbers("low", y.unit(), points.stream().mapToDouble(p -> p[2]).toArray())
-                .numbers("high", y.unit(), points.stream().mapToDouble(p -> p[3]).toArray())
+                .numbers(
+                        "high", y.unit(), points.stream().mapToDouble(p -> p[3]).toArray())
                 .build();
     }
 
     private static double[] point(Layer layer, int i) {
         double x = layer.x().at(i);
         if (layer instanceof Layer.Marks marks) {
-            return new double[] {x, marks.y().at(i), marks.low().at(i), marks.high().at(i)};
+            return new double[] {
+                x, marks.y().at(i), marks.low().at(i), marks.high().at(i)
+            };
         } else if (layer instanceof Layer.Band band) {
             return new double[] {x, Double.NaN, band.low().at(i), band.high().at(i)};
         }

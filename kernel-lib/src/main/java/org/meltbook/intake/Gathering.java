@@ -25,7 +25,6 @@ final class Gathering {
     /** A run whose readings of temperature stay within this many kelvin is one at their mean. Common practice. */
     private static final double STEADY_KELVIN = 1;
 
-
     private final String file;
     private final String digest;
     private final Layout layout;

@@ -17,8 +17,9 @@ public record Curve(Series x, Series y, List<Verdict> verdicts) {
     public Curve {
         verdicts = List.copyOf(verdicts);
         if (x.size() != y.size() || x.size() != verdicts.size()) {
-            throw new RangeException("a curve needs as many " + x.quantity().label() + " as " + y.quantity().label()
-                    + " values and verdicts, found " + x.size() + ", " + y.size() + " and " + verdicts.size());
+            throw new RangeException("a curve needs as many " + x.quantity().label() + " as "
+                    + y.quantity().label() + " values and verdicts, found " + x.size() + ", " + y.size() + " and "
+                    + verdicts.size());
         }
     }
 

@@ -75,7 +75,8 @@ public final class FlowCurve implements Measurement {
     private static void check(Curve curve, Quantity y) {
         if (curve.x().quantity() != Quantity.SHEAR_RATE || curve.y().quantity() != y) {
             throw new RangeException("a flow curve needs " + y.label() + " over shear rate, found "
-                    + curve.y().quantity().label() + " over " + curve.x().quantity().label());
+                    + curve.y().quantity().label() + " over "
+                    + curve.x().quantity().label());
         }
     }
 
@@ -126,7 +127,8 @@ public final class FlowCurve implements Measurement {
     @Override
     public String headline() {
         return "Flow curve" + (conditions.sample().isEmpty() ? "" : " of " + conditions.sample()) + ": "
-                + viscosity.size() + " points, " + NumberText.of(viscosity.x().values().smallest()) + " to "
+                + viscosity.size() + " points, "
+                + NumberText.of(viscosity.x().values().smallest()) + " to "
                 + NumberText.of(viscosity.x().values().largest()) + " 1/s"
                 + (firstNormalStress.isPresent() ? ", with first normal stress difference" : "")
                 + Trail.temperature(conditions) + Trail.setAside(List.of(viscosity)) + ".";
@@ -144,7 +146,8 @@ public final class FlowCurve implements Measurement {
             table.numbers("N₁", "Pa", firstNormalStress.get().y().values());
         }
         List<Rows> all = new ArrayList<>();
-        all.add(Trail.verdicts(table, viscosity, together ? firstNormalStress.get() : viscosity).build());
+        all.add(Trail.verdicts(table, viscosity, together ? firstNormalStress.get() : viscosity)
+                .build());
         if (firstNormalStress.isPresent() && !together) {
             all.add(Trail.rows(title() + ", first normal stress difference", firstNormalStress.get()));
         }

@@ -51,7 +51,8 @@ public final class FrequencySweep implements Measurement {
     private static void check(Curve curve, Quantity y) {
         if (curve.x().quantity() != Quantity.ANGULAR_FREQUENCY || curve.y().quantity() != y) {
             throw new RangeException("a frequency sweep needs " + y.label() + " over angular frequency, found "
-                    + curve.y().quantity().label() + " over " + curve.x().quantity().label());
+                    + curve.y().quantity().label() + " over "
+                    + curve.x().quantity().label());
         }
     }
 
@@ -123,7 +124,8 @@ public final class FrequencySweep implements Measurement {
                     .numbers("G″", "Pa", loss.y().values());
             return List.of(Trail.verdicts(together, storage, loss).build());
         }
-        return List.of(Trail.rows(title() + ", storage modulus", storage), Trail.rows(title() + ", loss modulus", loss));
+        return List.of(
+                Trail.rows(title() + ", storage modulus", storage), Trail.rows(title() + ", loss modulus", loss));
     }
 
     private String title() {
@@ -151,8 +153,7 @@ public final class FrequencySweep implements Measurement {
     /** The angular frequencies at which anything usable was measured, in rad/s, rising. */
     public Doubles frequencies() {
         return Doubles.of(java.util.stream.DoubleStream.concat(
-                        storage.usable().x().values().stream(),
-                        loss.usable().x().values().stream())
+                        storage.usable().x().values().stream(), loss.usable().x().values().stream())
                 .distinct()
                 .sorted()
                 .toArray());

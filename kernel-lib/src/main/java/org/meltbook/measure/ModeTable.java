@@ -39,7 +39,8 @@ public final class ModeTable implements Measurement {
     public static ModeTable of(Conditions conditions, Curve modes, List<Note> trail) {
         if (modes.x().quantity() != Quantity.RELAXATION_TIME || modes.y().quantity() != Quantity.RELAXATION_MODULUS) {
             throw new RangeException("a table of modes needs relaxation moduli over relaxation times, found "
-                    + modes.y().quantity().label() + " over " + modes.x().quantity().label());
+                    + modes.y().quantity().label() + " over "
+                    + modes.x().quantity().label());
         }
         return new ModeTable(conditions, modes, trail);
     }

@@ -22,8 +22,7 @@ import org.meltbook.units.Quantity;
  * verdict, and each step leaves a note; no row is dropped and no number is changed otherwise.
  */
 public final class Readings {
-    static final List<Quantity> STEADY_SHEAR =
-            List.of(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY);
+    static final List<Quantity> STEADY_SHEAR = List.of(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS, Quantity.VISCOSITY);
     private static final int MOST_DIGITS = 17;
 
     private final String step;

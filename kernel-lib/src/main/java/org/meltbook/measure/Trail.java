@@ -24,15 +24,22 @@ final class Trail {
 
     static Rows rows(String title, Curve curve) {
         Rows.Builder table = Rows.titled(title)
-                .numbers(curve.x().quantity().symbol(), curve.x().quantity().siUnit(), curve.x().values())
-                .numbers(curve.y().quantity().symbol(), curve.y().quantity().siUnit(), curve.y().values());
+                .numbers(
+                        curve.x().quantity().symbol(),
+                        curve.x().quantity().siUnit(),
+                        curve.x().values())
+                .numbers(
+                        curve.y().quantity().symbol(),
+                        curve.y().quantity().siUnit(),
+                        curve.y().values());
         return verdicts(table, curve, curve).build();
     }
 
     /** Adds a verdict column where there is anything to say. */
     static Rows.Builder verdicts(Rows.Builder table, Curve first, Curve second) {
         List<String> words = IntStream.range(0, first.size())
-                .mapToObj(row -> words(first.verdicts().get(row), second.verdicts().get(row)))
+                .mapToObj(row ->
+                        words(first.verdicts().get(row), second.verdicts().get(row)))
                 .toList();
         return words.stream().allMatch(String::isEmpty) ? table : table.text("verdict", words);
     }

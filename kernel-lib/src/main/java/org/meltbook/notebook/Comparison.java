@@ -93,7 +93,8 @@ public final class Comparison {
             return bundle.plainText().lines();
         }
         return bundle.data().entrySet().stream()
-                .filter(form -> form.getKey().startsWith("text/") && !form.getKey().equals("text/plain"))
+                .filter(form ->
+                        form.getKey().startsWith("text/") && !form.getKey().equals("text/plain"))
                 .flatMap(form -> visible(form.getValue().toString()));
     }
 

@@ -29,7 +29,8 @@ public final class DataFolder {
     static Path find(String name, Path start) {
         List<Path> looked = new ArrayList<>();
         for (Path folder = start.normalize(); folder != null; folder = folder.getParent()) {
-            for (Path candidate : List.of(folder.resolve(name), folder.resolve("data").resolve(name))) {
+            for (Path candidate :
+                    List.of(folder.resolve(name), folder.resolve("data").resolve(name))) {
                 if (Files.exists(candidate)) {
                     return candidate;
                 }

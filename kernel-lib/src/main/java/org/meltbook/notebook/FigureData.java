@@ -130,7 +130,8 @@ final class FigureData {
     }
 
     private static void ends(Map<String, Object> data, Doubles low, Doubles high) {
-        boolean some = low.stream().anyMatch(v -> !Double.isNaN(v)) || high.stream().anyMatch(v -> !Double.isNaN(v));
+        boolean some =
+                low.stream().anyMatch(v -> !Double.isNaN(v)) || high.stream().anyMatch(v -> !Double.isNaN(v));
         if (some) {
             data.put("low", numbers(low));
             data.put("high", numbers(high));

@@ -155,7 +155,8 @@ public final class Main {
         }
 
         private int report(List<RunResult> results, int asked) {
-            List<String> problems = results.stream().flatMap(r -> r.problems().stream()).toList();
+            List<String> problems =
+                    results.stream().flatMap(r -> r.problems().stream()).toList();
             problems.forEach(err::println);
             long good = results.stream().filter(RunResult::isGood).count();
             boolean whole = results.stream().noneMatch(RunResult::isInterrupted) && results.size() == asked;
@@ -306,8 +307,10 @@ public final class Main {
         @Override
         public String[] getVersion() {
             String version = Main.class.getPackage().getImplementationVersion();
-            return new String[] {"Meltbook " + (version == null ? "(built from source)" : version) + ", Java "
-                    + Runtime.version().feature()};
+            return new String[] {
+                "Meltbook " + (version == null ? "(built from source)" : version) + ", Java "
+                        + Runtime.version().feature()
+            };
         }
     }
 }

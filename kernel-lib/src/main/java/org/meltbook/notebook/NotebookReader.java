@@ -87,7 +87,8 @@ final class NotebookReader {
             case "stream" -> new Output.Stream(
                     text(json.get("name"), where + ", name"), text(json.get("text"), where + ", text"));
             case "display_data" -> new Output.Value(bundle(json, where), Optional.empty());
-            case "execute_result" -> new Output.Value(bundle(json, where), count(json).or(() -> Optional.of(0)));
+            case "execute_result" -> new Output.Value(
+                    bundle(json, where), count(json).or(() -> Optional.of(0)));
             case "error" -> new Output.Failure(
                     text(json.get("ename"), where + ", ename"),
                     text(json.get("evalue"), where + ", evalue"),
@@ -100,9 +101,11 @@ final class NotebookReader {
         Map<String, Object> data = new LinkedHashMap<>();
         object(json, "data", where).entrySet().forEach(form -> {
             String mime = form.getKey();
-            data.put(mime, isJson(mime)
-                    ? GSON.fromJson(form.getValue(), Object.class)
-                    : text(form.getValue(), where + ", " + mime));
+            data.put(
+                    mime,
+                    isJson(mime)
+                            ? GSON.fromJson(form.getValue(), Object.class)
+                            : text(form.getValue(), where + ", " + mime));
         });
         Map<String, Object> metadata = new LinkedHashMap<>();
         object(json, "metadata", where)
@@ -124,7 +127,9 @@ final class NotebookReader {
         if (!(value instanceof JsonArray array)) {
             throw wrong(where + ": expected a traceback, found " + NotebookFile.kind(value));
         }
-        return array.asList().stream().map(line -> text(line, where + ", traceback")).toList();
+        return array.asList().stream()
+                .map(line -> text(line, where + ", traceback"))
+                .toList();
     }
 
     /** Text in one piece or as a list of lines. */

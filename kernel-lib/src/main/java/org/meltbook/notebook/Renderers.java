@@ -123,7 +123,10 @@ public final class Renderers {
 
     private static void putFigures(List<Figure> figures, List<Drawing> drawings, DisplayData data) {
         if (!figures.isEmpty()) {
-            data.putData(FigureData.MIME, FigureData.of(figures, drawings.stream().map(Drawing::caption).toList()));
+            data.putData(
+                    FigureData.MIME,
+                    FigureData.of(
+                            figures, drawings.stream().map(Drawing::caption).toList()));
         }
     }
 

@@ -16,7 +16,6 @@ import org.meltbook.kernel.Evaluator;
 import org.meltbook.kernel.Outcome;
 import org.meltbook.report.Formulas;
 import org.meltbook.report.IndexPage;
-import org.meltbook.report.Page;
 
 /**
  * Runs notebooks without Jupyter, each in a session of its own, and writes for each the executed notebook and a page,
@@ -55,7 +54,9 @@ public final class Runner {
                 continue;
             }
             try (Stream<Path> files = Files.list(path)) {
-                List<Path> found = files.filter(f -> f.getFileName().toString().endsWith(SUFFIX)).sorted().toList();
+                List<Path> found = files.filter(f -> f.getFileName().toString().endsWith(SUFFIX))
+                        .sorted()
+                        .toList();
                 if (found.isEmpty()) {
                     throw new NotebookException(path + ": there is no notebook (*" + SUFFIX + ") in this folder");
                 }
@@ -143,8 +144,15 @@ public final class Runner {
                 Outcome outcome = session.run(cell.source(), recorder, plan.limit());
                 run.add(cell.with(Optional.of(count), recorder.ended(outcome, count)));
                 boolean failed = outcome instanceof Outcome.Failed;
-                progress.printf(Locale.ROOT, "%s  [%d/%d] %s  %.2f s%s%n", name, count, cells, cell.id(),
-                        (System.nanoTime() - start) / 1e9, failed ? "  FAILED" : "");
+                progress.printf(
+                        Locale.ROOT,
+                        "%s  [%d/%d] %s  %.2f s%s%n",
+                        name,
+                        count,
+                        cells,
+                        cell.id(),
+                        (System.nanoTime() - start) / 1e9,
+                        failed ? "  FAILED" : "");
                 if (outcome instanceof Outcome.Failed failure) {
                     problems.add(problem(file, count, cell, failure));
                 }
@@ -188,7 +196,10 @@ public final class Runner {
                 throw new NotebookException(other + " and " + notebook + " would both be written to "
                         + plan.into().resolve(name(notebook) + ".html") + "; run them into different folders");
             }
-            Path target = plan.into().resolve(name(notebook) + SUFFIX).toAbsolutePath().normalize();
+            Path target = plan.into()
+                    .resolve(name(notebook) + SUFFIX)
+                    .toAbsolutePath()
+                    .normalize();
             if (target.equals(notebook.toAbsolutePath().normalize())) {
                 throw new NotebookException(notebook + " would be overwritten by its results; choose another folder,"
                         + " or --store to put them into the notebook");

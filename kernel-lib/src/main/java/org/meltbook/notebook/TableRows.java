@@ -19,7 +19,9 @@ final class TableRows {
             } else {
                 rows.text(
                         column.name(),
-                        IntStream.range(0, column.size()).mapToObj(column::getString).toList());
+                        IntStream.range(0, column.size())
+                                .mapToObj(column::getString)
+                                .toList());
             }
         }
         return rows.build();

@@ -32,8 +32,10 @@ public final class Tidy {
     public static Notebook of(Notebook notebook) {
         List<Notebook.Cell> cells = new ArrayList<>();
         Set<String> taken = new HashSet<>();
-        Set<String> kept = new HashSet<>(
-                notebook.cells().stream().map(Notebook.Cell::id).filter(Tidy::isValid).toList());
+        Set<String> kept = new HashSet<>(notebook.cells().stream()
+                .map(Notebook.Cell::id)
+                .filter(Tidy::isValid)
+                .toList());
         int run = 0;
         for (Notebook.Cell cell : notebook.cells()) {
             String id = id(cell, kept, taken);
@@ -116,10 +118,12 @@ public final class Tidy {
     /** Standard output and error come in pieces whose order is chance: output first, then error, each in one piece. */
     private static List<Output.Stream> joined(List<Output.Stream> pieces) {
         return Stream.of("stdout", "stderr")
-                .map(name -> new Output.Stream(name, pieces.stream()
-                        .filter(piece -> piece.name().equals(name))
-                        .map(Output.Stream::text)
-                        .reduce("", String::concat)))
+                .map(name -> new Output.Stream(
+                        name,
+                        pieces.stream()
+                                .filter(piece -> piece.name().equals(name))
+                                .map(Output.Stream::text)
+                                .reduce("", String::concat)))
                 .filter(stream -> !stream.text().isEmpty())
                 .toList();
     }

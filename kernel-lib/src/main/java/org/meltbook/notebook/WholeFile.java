@@ -21,7 +21,8 @@ final class WholeFile {
      */
     static void write(Path file, String text) {
         Path target = file.toAbsolutePath();
-        Path aside = target.resolveSibling("." + target.getFileName() + "." + ProcessHandle.current().pid() + ".part");
+        Path aside = target.resolveSibling(
+                "." + target.getFileName() + "." + ProcessHandle.current().pid() + ".part");
         try {
             Files.createDirectories(target.getParent());
             try (FileChannel channel = FileChannel.open(

@@ -25,6 +25,7 @@ public final class Formulas {
     private static final Pattern PRIMES = Pattern.compile("(?<!\\\\)('+)");
     /** A word of style with its argument: braces around both keep the style from reaching what follows. */
     private static final Pattern STYLED = Pattern.compile("\\\\math(?:bf|rm|sf|it)\\{[^{}]*\\}");
+
     private static final Pattern BRACED = Pattern.compile("\\\\(?:mbox|textrm)\\{[^{}]*\\}");
 
     private final SnuggleEngine engine = new SnuggleEngine();
@@ -72,8 +73,8 @@ public final class Formulas {
     }
 
     private static String inKnownWords(String tex) {
-        String words = WORD.matcher(tex)
-                .replaceAll(m -> Matcher.quoteReplacement(SAME.getOrDefault(m.group(1), m.group())));
+        String words =
+                WORD.matcher(tex).replaceAll(m -> Matcher.quoteReplacement(SAME.getOrDefault(m.group(1), m.group())));
         words = STYLED.matcher(words).replaceAll(m -> Matcher.quoteReplacement("{" + m.group() + "}"));
         StringBuilder text = new StringBuilder();
         Matcher braced = BRACED.matcher(words);
@@ -87,7 +88,8 @@ public final class Formulas {
 
     private static String primesIn(String tex) {
         return PRIMES.matcher(tex)
-                .replaceAll(m -> Matcher.quoteReplacement("^{" + "\\prime".repeat(m.group().length()) + "}"));
+                .replaceAll(m -> Matcher.quoteReplacement(
+                        "^{" + "\\prime".repeat(m.group().length()) + "}"));
     }
 
     private static Map<String, String> sameWords() {

@@ -38,21 +38,27 @@ public final class HtmlTable {
         }
         html.append("<thead><tr>");
         for (Rows.Column column : rows.columns()) {
-            html.append("<th scope=\"col\" ").append(style(column, RULE)).append('>')
-                    .append(Html.escape(column.label())).append("</th>");
+            html.append("<th scope=\"col\" ")
+                    .append(style(column, RULE))
+                    .append('>')
+                    .append(Html.escape(column.label()))
+                    .append("</th>");
         }
         html.append("</tr></thead>\n<tbody>\n");
         IntStream.range(0, whole ? rows.size() : FIRST).forEach(row -> html.append(line(rows.columns(), row)));
         if (!whole) {
-            html.append("<tr><td colspan=\"").append(rows.columns().size()).append("\" style=\"").append(CELL)
+            html.append("<tr><td colspan=\"")
+                    .append(rows.columns().size())
+                    .append("\" style=\"")
+                    .append(CELL)
                     .append("\">⋮</td></tr>\n");
-            IntStream.range(rows.size() - LAST, rows.size())
-                    .forEach(row -> html.append(line(rows.columns(), row)));
+            IntStream.range(rows.size() - LAST, rows.size()).forEach(row -> html.append(line(rows.columns(), row)));
         }
         html.append("</tbody>\n</table>\n");
         int shown = whole ? rows.size() : FIRST + LAST;
         notes(rows, shown).forEach(note -> html.append("<p class=\"note\" style=\"font-size:.9em;margin:.2em .7em\">")
-                .append(Html.escape(note)).append("</p>\n"));
+                .append(Html.escape(note))
+                .append("</p>\n"));
         return html.toString();
     }
 

@@ -19,13 +19,21 @@ public final class IndexPage {
 
     /** The index of the given pages, in their order. */
     public static String of(String title, List<Entry> entries) {
-        StringBuilder body = new StringBuilder("<main>\n<h1>").append(Html.escape(title)).append("</h1>\n");
+        StringBuilder body =
+                new StringBuilder("<main>\n<h1>").append(Html.escape(title)).append("</h1>\n");
         body.append("<ol class=\"index\">\n");
         for (Entry entry : entries) {
-            body.append("<li><a href=\"").append(Html.escape(entry.href())).append("\">")
-                    .append(Html.escape(entry.title())).append("</a>\n<p>").append(Html.escape(entry.sentence()))
-                    .append("</p>\n<p class=\"status ").append(entry.good() ? "good" : "bad").append("\">")
-                    .append(Html.escape(entry.status())).append("</p></li>\n");
+            body.append("<li><a href=\"")
+                    .append(Html.escape(entry.href()))
+                    .append("\">")
+                    .append(Html.escape(entry.title()))
+                    .append("</a>\n<p>")
+                    .append(Html.escape(entry.sentence()))
+                    .append("</p>\n<p class=\"status ")
+                    .append(entry.good() ? "good" : "bad")
+                    .append("\">")
+                    .append(Html.escape(entry.status()))
+                    .append("</p></li>\n");
         }
         body.append("</ol>\n</main>\n");
         return Page.document(title, body.toString());

@@ -17,8 +17,8 @@ final class MathMl {
     private static final Map<String, String> CHARACTERS = Map.of(
             "\u0307", "\u02D9", "\u0308", "\u00A8", "\u0302", "^", "\u0303", "~", "\u20D7", "\u2192", "-", "\u2212");
     private static final Set<String> FUNCTIONS = Set.of(
-            "sin", "cos", "tan", "sinh", "cosh", "tanh", "arctan", "ln", "log", "exp", "max", "min", "lim",
-            "tr", "det");
+            "sin", "cos", "tan", "sinh", "cosh", "tanh", "arctan", "ln", "log", "exp", "max", "min", "lim", "tr",
+            "det");
     private static final Set<String> TALL = Set.of("mfrac", "mtable", "munder", "munderover", "msqrt", "mroot");
     private static final int PRIME = '\u2032';
     private static final String THIN = "0.167em";
@@ -49,8 +49,11 @@ final class MathMl {
             return Html.escape(node.getTextContent());
         }
         StringBuilder text = new StringBuilder("<").append(name(element));
-        attributes(element).forEach((key, value) ->
-                text.append(' ').append(key).append("=\"").append(Html.escape(value)).append('"'));
+        attributes(element).forEach((key, value) -> text.append(' ')
+                .append(key)
+                .append("=\"")
+                .append(Html.escape(value))
+                .append('"'));
         text.append('>');
         children(element).forEach(child -> text.append(text(child)));
         return text.append("</").append(name(element)).append('>').toString();
@@ -127,8 +130,14 @@ final class MathMl {
     /** Primes are letters at full height, as in print: as exponents browsers make them too small to see. */
     private static void prime(Element power) {
         List<Node> parts = children(power);
-        int count = (int) parts.get(parts.size() - 1).getTextContent().codePoints().filter(c -> c == PRIME).count();
-        if (count == 0 || count > 3 || parts.get(parts.size() - 1).getTextContent().length() != count) {
+        int count = (int) parts.get(parts.size() - 1)
+                .getTextContent()
+                .codePoints()
+                .filter(c -> c == PRIME)
+                .count();
+        if (count == 0
+                || count > 3
+                || parts.get(parts.size() - 1).getTextContent().length() != count) {
             return;
         }
         Element mark = make(power, "mo", "\u2032\u2033\u2034".substring(count - 1, count));
@@ -149,8 +158,11 @@ final class MathMl {
     /** A function's name stands apart from what it is taken of: tan δ. */
     private static void function(Element element) {
         Node next = element.getNextSibling();
-        boolean row = Set.of("mrow", "math").contains(element.getParentNode().getNodeName().replaceFirst(".*:", ""));
-        if (row && FUNCTIONS.contains(element.getTextContent()) && next instanceof Element follower
+        boolean row = Set.of("mrow", "math")
+                .contains(element.getParentNode().getNodeName().replaceFirst(".*:", ""));
+        if (row
+                && FUNCTIONS.contains(element.getTextContent())
+                && next instanceof Element follower
                 && !Set.of("mfenced", "mo").contains(name(follower))) {
             Element space = make(element, "mspace", "");
             space.setAttribute("width", THIN);

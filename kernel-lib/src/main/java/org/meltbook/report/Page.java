@@ -40,7 +40,9 @@ public final class Page {
         Markdown markdown = new Markdown(formulas);
         StringBuilder body = new StringBuilder("<main>\n");
         if (!banner.isBlank()) {
-            body.append("<p class=\"banner\" role=\"status\">").append(Html.escape(banner)).append("</p>\n");
+            body.append("<p class=\"banner\" role=\"status\">")
+                    .append(Html.escape(banner))
+                    .append("</p>\n");
         }
         blocks.forEach(block -> body.append(html(block, markdown)));
         body.append("</main>\n");
@@ -67,7 +69,8 @@ public final class Page {
                     + "</code></pre></div>\n";
         } else if (block instanceof Block.Printed printed) {
             String kind = printed.kind().name().toLowerCase(java.util.Locale.ROOT);
-            return "<pre class=\"printed " + kind + "\">" + Html.escape(printed.text().stripTrailing()) + "</pre>\n";
+            return "<pre class=\"printed " + kind + "\">"
+                    + Html.escape(printed.text().stripTrailing()) + "</pre>\n";
         } else if (block instanceof Block.Rich rich) {
             return "<div class=\"rich\">\n" + rich.html().stripTrailing() + "\n</div>\n";
         }

@@ -90,7 +90,8 @@ public final class RelaxationSpectrum implements Exhibit {
      * @throws RangeException if no row is usable, or two have the same relaxation time
      */
     public static RelaxationSpectrum of(ModeTable table) {
-        return of(table.modes().usable().y().values(), table.modes().usable().x().values());
+        return of(
+                table.modes().usable().y().values(), table.modes().usable().x().values());
     }
 
     /** The modes from short to long relaxation times. */

@@ -72,14 +72,18 @@ public final class LawSurvey implements Exhibit {
     public List<Rows> rows() {
         return List.of(Rows.titled("Laws side by side")
                 .text("law", fits.stream().map(fit -> fit.law().family().name()).toList())
-                .text("free parameters", fits.stream().map(LawSurvey::freeParameters).toList())
+                .text(
+                        "free parameters",
+                        fits.stream().map(LawSurvey::freeParameters).toList())
                 .numbers(
                         "miss (root mean square)",
                         "%",
                         Doubles.of(fits.stream()
                                 .mapToDouble(fit -> 100 * fit.fit().rootMeanSquare())
                                 .toArray()))
-                .text("zero-shear viscosity [Pa·s]", fits.stream().map(LawSurvey::plateau).toList())
+                .text(
+                        "zero-shear viscosity [Pa·s]",
+                        fits.stream().map(LawSurvey::plateau).toList())
                 .note("A law with more parameters always comes closer; that alone is no reason to prefer it.")
                 .build());
     }
@@ -104,8 +108,10 @@ public final class LawSurvey implements Exhibit {
     @Override
     public List<Figure> figures() {
         Curve usable = curve.viscosity().usable();
-        Doubles rates = Doubles.logSpaced(usable.x().values().smallest(), usable.x().values().largest(), 60);
-        Figure.Builder figure = Figure.titled("Laws on the viscosity of " + curve.conditions().sample())
+        Doubles rates = Doubles.logSpaced(
+                usable.x().values().smallest(), usable.x().values().largest(), 60);
+        Figure.Builder figure = Figure.titled(
+                        "Laws on the viscosity of " + curve.conditions().sample())
                 .x(Quantity.SHEAR_RATE)
                 .y(Quantity.VISCOSITY);
         fits.forEach(fit -> figure.line(fit.law().family().name(), rates, rates.map(fit.law()::at)));

@@ -24,7 +24,6 @@ import org.knowm.xchart.XYSeries.XYSeriesRenderStyle;
 import org.meltbook.base.Doubles;
 import org.meltbook.figure.Axis;
 import org.meltbook.figure.Figure;
-import org.meltbook.units.Quantity;
 
 class DrawingTest {
     private final Locale locale = Locale.getDefault();
@@ -67,15 +66,25 @@ class DrawingTest {
         XYChart chart = Samples.moduli().chart();
         assertEquals("angular frequency ω [rad/s]", chart.getXAxisTitle());
         assertEquals(17, chart.getSeries("G′").getXData().length);
-        assertEquals(XYSeriesRenderStyle.Scatter, chart.getSeries("G′").getXYSeriesRenderStyle().orElseThrow());
-        assertEquals(XYSeriesRenderStyle.Line, chart.getSeries("G″, fit").getXYSeriesRenderStyle().orElseThrow());
-        assertEquals(chart.getSeries("G″").getMarkerColor(), chart.getSeries("G″, fit").getLineColor());
+        assertEquals(
+                XYSeriesRenderStyle.Scatter,
+                chart.getSeries("G′").getXYSeriesRenderStyle().orElseThrow());
+        assertEquals(
+                XYSeriesRenderStyle.Line,
+                chart.getSeries("G″, fit").getXYSeriesRenderStyle().orElseThrow());
+        assertEquals(
+                chart.getSeries("G″").getMarkerColor(),
+                chart.getSeries("G″, fit").getLineColor());
     }
 
     @Test
     void layers_of_one_name_are_all_drawn_and_a_blank_name_is_no_entry_of_its_own() {
         Doubles x = Doubles.of(1, 10);
-        XYChart chart = Drawing.of(Samples.loglog().marks("lot", x, x).line("lot", x, x).line("", x, x).build())
+        XYChart chart = Drawing.of(Samples.loglog()
+                        .marks("lot", x, x)
+                        .line("lot", x, x)
+                        .line("", x, x)
+                        .build())
                 .chart();
         assertEquals(3, chart.getSeriesCollection().size());
         assertEquals("lot", chart.getSeries("lot (2)").getLabel());
@@ -84,7 +93,9 @@ class DrawingTest {
 
     @Test
     void a_marker_is_where_its_point_is() {
-        Canvas canvas = Canvas.of(Samples.loglog().marks("one", Doubles.of(1, 10), Doubles.of(5, 50)).build());
+        Canvas canvas = Canvas.of(Samples.loglog()
+                .marks("one", Doubles.of(1, 10), Doubles.of(5, 50))
+                .build());
         assertEquals(Palette.of(0).getRGB(), canvas.at(10, 50));
         assertFalse(canvas.colourNear(canvas.x(10), canvas.y(5), Palette.of(0).getRGB()));
     }
@@ -96,20 +107,29 @@ class DrawingTest {
                 .caption("Invented.")
                 .build();
         Canvas canvas = Canvas.of(figure);
-        assertEquals("Invented. 2 points at or below zero are marked at the edge.", Drawing.of(figure).caption());
-        assertTrue(canvas.colourNear(canvas.x(2), canvas.bottom() - 6, Palette.of(0).getRGB()));
-        assertTrue(canvas.colourNear(canvas.x(4), canvas.bottom() - 6, Palette.of(0).getRGB()));
-        assertFalse(canvas.colourNear(canvas.x(1), canvas.bottom() - 6, Palette.of(0).getRGB()));
+        assertEquals(
+                "Invented. 2 points at or below zero are marked at the edge.",
+                Drawing.of(figure).caption());
+        assertTrue(canvas.colourNear(
+                canvas.x(2), canvas.bottom() - 6, Palette.of(0).getRGB()));
+        assertTrue(canvas.colourNear(
+                canvas.x(4), canvas.bottom() - 6, Palette.of(0).getRGB()));
+        assertFalse(canvas.colourNear(
+                canvas.x(1), canvas.bottom() - 6, Palette.of(0).getRGB()));
         assertEquals(0xFFFFFFFF, canvas.pixel(canvas.x(2), canvas.bottom() - 5), "the sign is open");
     }
 
     @Test
     void a_point_left_of_a_logarithmic_axis_is_marked_at_the_left() {
-        Figure figure =
-                Samples.loglog().marks("one", Doubles.of(0, 1, 10), Doubles.of(7, 5, 50)).build();
+        Figure figure = Samples.loglog()
+                .marks("one", Doubles.of(0, 1, 10), Doubles.of(7, 5, 50))
+                .build();
         Canvas canvas = Canvas.of(figure);
-        assertEquals("1 point at or below zero is marked at the edge.", Drawing.of(figure).caption());
-        assertTrue(canvas.colourNear(canvas.left() + 6, canvas.y(7), Palette.of(0).getRGB()));
+        assertEquals(
+                "1 point at or below zero is marked at the edge.",
+                Drawing.of(figure).caption());
+        assertTrue(
+                canvas.colourNear(canvas.left() + 6, canvas.y(7), Palette.of(0).getRGB()));
     }
 
     @Test
@@ -132,9 +152,12 @@ class DrawingTest {
                 .build();
         Canvas canvas = Canvas.of(figure);
         assertEquals(
-                "2 error bars reach beyond the axis and are cut at the edge.", Drawing.of(figure).caption());
-        assertTrue(canvas.colourNear(canvas.x(2), canvas.bottom() - 10, Palette.of(0).getRGB()));
-        assertFalse(canvas.colourNear(canvas.x(1), canvas.bottom() - 10, Palette.of(0).getRGB()));
+                "2 error bars reach beyond the axis and are cut at the edge.",
+                Drawing.of(figure).caption());
+        assertTrue(canvas.colourNear(
+                canvas.x(2), canvas.bottom() - 10, Palette.of(0).getRGB()));
+        assertFalse(canvas.colourNear(
+                canvas.x(1), canvas.bottom() - 10, Palette.of(0).getRGB()));
     }
 
     @Test
@@ -153,7 +176,9 @@ class DrawingTest {
         Figure figure = Samples.loglog()
                 .line("model", Doubles.of(1, 2, 4, 8, 16), Doubles.of(10, 10, -1, 10, 10))
                 .build();
-        assertEquals("1 value of a line cannot be shown on the axes and leaves a gap.", Drawing.of(figure).caption());
+        assertEquals(
+                "1 value of a line cannot be shown on the axes and leaves a gap.",
+                Drawing.of(figure).caption());
     }
 
     @Test
@@ -162,7 +187,9 @@ class DrawingTest {
                 .band("interval", Doubles.of(1, 2, 4), Doubles.of(1, 0, 1), Doubles.of(10, 10, 10))
                 .build();
         Canvas canvas = Canvas.of(figure);
-        assertEquals("1 place of a band reaches beyond the axes and is cut there.", Drawing.of(figure).caption());
+        assertEquals(
+                "1 place of a band reaches beyond the axes and is cut there.",
+                Drawing.of(figure).caption());
         assertFalse(canvas.pixel(canvas.x(2) + 2, canvas.bottom() - 8) == 0xFFFFFFFF);
     }
 
@@ -173,7 +200,9 @@ class DrawingTest {
                 .band("interval", Doubles.of(1, 2, 4), Doubles.of(0, 0, 0), Doubles.of(inf, inf, inf))
                 .build();
         Canvas canvas = Canvas.of(figure);
-        assertEquals("3 places of bands reach beyond the axes and are cut there.", Drawing.of(figure).caption());
+        assertEquals(
+                "3 places of bands reach beyond the axes and are cut there.",
+                Drawing.of(figure).caption());
         assertFalse(canvas.pixel(canvas.x(2.2), canvas.bottom() - 8) == 0xFFFFFFFF);
         assertFalse(canvas.pixel(canvas.x(2.2), canvas.top() + 8) == 0xFFFFFFFF);
     }
@@ -201,13 +230,16 @@ class DrawingTest {
         Figure figure = Samples.loglog()
                 .marks("one", Doubles.of(1, 2, 4), Doubles.of(5, Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY))
                 .build();
-        assertEquals("2 points are infinite or too large to be drawn.", Drawing.of(figure).caption());
+        assertEquals(
+                "2 points are infinite or too large to be drawn.",
+                Drawing.of(figure).caption());
         assertEquals(1, Drawing.of(figure).chart().getSeries("one").getXData().length);
     }
 
     @Test
     void a_figure_without_any_point_is_an_empty_frame_that_says_so() {
-        Figure figure = Samples.loglog().marks("one", Doubles.of(), Doubles.of()).build();
+        Figure figure =
+                Samples.loglog().marks("one", Doubles.of(), Doubles.of()).build();
         assertEquals("There is no point that can be drawn.", Drawing.of(figure).caption());
         assertTrue(Drawing.of(figure).png().length > 1000);
         assertTrue(Drawing.of(Samples.loglog().build()).png().length > 1000);
@@ -226,15 +258,25 @@ class DrawingTest {
     void awkward_numbers_do_not_make_a_drawing_fail() {
         double inf = Double.POSITIVE_INFINITY;
         List<Doubles> awkward = List.of(
-                Doubles.of(3, 3, 3), Doubles.of(0, 0, 0), Doubles.of(-1, -2, -3), Doubles.of(1e-300, 1, 1e300),
-                Doubles.of(Double.MIN_VALUE, 1, Double.MAX_VALUE), Doubles.of(-inf, 0, inf),
-                Doubles.of(1, Math.nextUp(1), 1), Doubles.of(1e-9, 1, 1e6), Doubles.of(Double.NaN, 1, Double.NaN),
-                Doubles.of(1e15, 1e15 + 1, 1e15 + 2), Doubles.of(1e-12, 2e-12, 3e-12), Doubles.of(-0.0, 0.0, 1));
+                Doubles.of(3, 3, 3),
+                Doubles.of(0, 0, 0),
+                Doubles.of(-1, -2, -3),
+                Doubles.of(1e-300, 1, 1e300),
+                Doubles.of(Double.MIN_VALUE, 1, Double.MAX_VALUE),
+                Doubles.of(-inf, 0, inf),
+                Doubles.of(1, Math.nextUp(1), 1),
+                Doubles.of(1e-9, 1, 1e6),
+                Doubles.of(Double.NaN, 1, Double.NaN),
+                Doubles.of(1e15, 1e15 + 1, 1e15 + 2),
+                Doubles.of(1e-12, 2e-12, 3e-12),
+                Doubles.of(-0.0, 0.0, 1));
         for (Axis.Scale scale : Axis.Scale.values()) {
             for (Doubles x : awkward) {
                 for (Doubles y : awkward) {
                     Axis axis = new Axis("quantity", "1", scale);
-                    Figure figure = Figure.titled("").x(axis).y(axis)
+                    Figure figure = Figure.titled("")
+                            .x(axis)
+                            .y(axis)
                             .marks("points", x, y, x, y)
                             .line("line", x, y)
                             .band("band", x, y, x)

@@ -17,8 +17,13 @@ class PaletteTest {
     @Test
     void the_colours_are_the_published_ones() {
         List<Color> published = List.of(
-                new Color(0x0072B2), new Color(0xD55E00), new Color(0x009E73), new Color(0xCC79A7),
-                new Color(0x000000), new Color(0xE69F00), new Color(0x56B4E9));
+                new Color(0x0072B2),
+                new Color(0xD55E00),
+                new Color(0x009E73),
+                new Color(0xCC79A7),
+                new Color(0x000000),
+                new Color(0xE69F00),
+                new Color(0x56B4E9));
         assertEquals(published, Palette.COLOURS);
     }
 
@@ -43,8 +48,7 @@ class PaletteTest {
     @Test
     void dashed_is_never_drawn_like_solid() {
         for (int family = 0; family < 12; family++) {
-            assertNotEquals(
-                    Palette.stroke(Layer.Style.SOLID, family), Palette.stroke(Layer.Style.DASHED, family));
+            assertNotEquals(Palette.stroke(Layer.Style.SOLID, family), Palette.stroke(Layer.Style.DASHED, family));
         }
     }
 

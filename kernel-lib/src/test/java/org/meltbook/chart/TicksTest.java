@@ -65,8 +65,7 @@ class TicksTest {
 
     @Test
     void a_linear_axis_of_tiny_numbers_has_labels() {
-        assertEquals(
-                List.of("0", "1×10⁻¹²", "2×10⁻¹²", "3×10⁻¹²"), labels(new Scale(-1e-13, 3.1e-12, false), 300));
+        assertEquals(List.of("0", "1×10⁻¹²", "2×10⁻¹²", "3×10⁻¹²"), labels(new Scale(-1e-13, 3.1e-12, false), 300));
     }
 
     @ParameterizedTest
@@ -76,7 +75,8 @@ class TicksTest {
     })
     void ticks_rise_within_the_axis_and_their_labels_differ(double min, double max, boolean logarithmic) {
         List<Tick> ticks = ticks(new Scale(min, max, logarithmic), 600);
-        List<String> labels = ticks.stream().filter(Tick::labelled).map(Tick::label).toList();
+        List<String> labels =
+                ticks.stream().filter(Tick::labelled).map(Tick::label).toList();
         assertTrue(labels.size() >= 2 && labels.size() <= 12, labels.toString());
         assertEquals(labels.size(), labels.stream().distinct().count(), labels.toString());
         for (int i = 0; i < ticks.size(); i++) {
@@ -91,7 +91,10 @@ class TicksTest {
     }
 
     private static List<String> labels(Scale scale, double length) {
-        return ticks(scale, length).stream().filter(Tick::labelled).map(Tick::label).toList();
+        return ticks(scale, length).stream()
+                .filter(Tick::labelled)
+                .map(Tick::label)
+                .toList();
     }
 
     private static List<Tick> ticks(Scale scale, double length) {

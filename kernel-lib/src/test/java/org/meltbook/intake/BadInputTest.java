@@ -30,8 +30,8 @@ class BadInputTest {
     void a_file_with_no_unit_row_says_how_to_give_units() {
         refused(
                 "run.csv:1, column 'shear rate': expected a unit of shear rate in the heading, as in 'shear rate"
-                    + " [1/s]', in a row below the header, or in code with Exports.reading(file).unit(\"shear rate\","
-                    + " …), found none",
+                        + " [1/s]', in a row below the header, or in code with Exports.reading(file).unit(\"shear rate\","
+                        + " …), found none",
                 "shear rate,viscosity",
                 "0.1,1000",
                 "1,900");

@@ -137,7 +137,8 @@ final class Browser implements AutoCloseable {
     public void close() throws IOException, InterruptedException {
         try {
             client.send(
-                    HttpRequest.newBuilder(URI.create(session)).DELETE().build(), HttpResponse.BodyHandlers.discarding());
+                    HttpRequest.newBuilder(URI.create(session)).DELETE().build(),
+                    HttpResponse.BodyHandlers.discarding());
         } finally {
             driver.destroy();
             if (!driver.waitFor(10, TimeUnit.SECONDS)) {

@@ -105,8 +105,10 @@ class JupyterIT {
         try (Browser browser = Browser.open(Files.createDirectories(home.resolve("profile")))) {
             answering(server, address);
             browser.go(address + "notebooks/notebooks/00-first-look.ipynb");
-            Waiting.until("the notebook is open and its kernel idle", Duration.ofMinutes(2), () -> browser.holds(
-                    "window.Jupyter && Jupyter.notebook && Jupyter.notebook.kernel"
+            Waiting.until(
+                    "the notebook is open and its kernel idle",
+                    Duration.ofMinutes(2),
+                    () -> browser.holds("window.Jupyter && Jupyter.notebook && Jupyter.notebook.kernel"
                             + " && Jupyter.notebook.kernel.is_connected() && !Jupyter.notebook.kernel_busy"));
             browser.script("Jupyter.notebook.clear_all_output(); Jupyter.notebook.execute_all_cells();");
             Waiting.until(
@@ -136,7 +138,9 @@ class JupyterIT {
         HttpRequest status = HttpRequest.newBuilder(address.resolve("api")).build();
         Waiting.until("Jupyter Notebook answers", Duration.ofMinutes(1), () -> {
             try {
-                return client.send(status, HttpResponse.BodyHandlers.discarding()).statusCode() == 200;
+                return client.send(status, HttpResponse.BodyHandlers.discarding())
+                                .statusCode()
+                        == 200;
             } catch (IOException notYet) {
                 return false;
             } catch (InterruptedException stopped) {
@@ -204,7 +208,8 @@ class JupyterIT {
         boolean required = System.getenv("MELTBOOK_REQUIRE_JUPYTER") != null;
         assertTrue(there || !required, "required here, but not found: " + String.join(" ", command));
         if (!there) {
-            System.out.println("A test with the real Jupyter was not run: '" + String.join(" ", command) + "' is not there.");
+            System.out.println(
+                    "A test with the real Jupyter was not run: '" + String.join(" ", command) + "' is not there.");
         }
         Assumptions.assumeTrue(there);
     }

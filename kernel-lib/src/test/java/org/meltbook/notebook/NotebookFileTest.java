@@ -27,7 +27,11 @@ class NotebookFileTest {
     Path folder;
 
     @ParameterizedTest(name = "{1}")
-    @CsvSource(delimiter = '|', quoteCharacter = '~', textBlock = """
+    @CsvSource(
+            delimiter = '|',
+            quoteCharacter = '~',
+            textBlock =
+                    """
             this is no JSON | it is not JSON
             {"cells": [}    | it is not JSON (wrong at line 1 column
             {"cells": []    | it is not JSON
@@ -44,7 +48,8 @@ class NotebookFileTest {
             """)
     void a_file_that_is_no_notebook_is_refused_in_one_line(String text, String part) throws IOException {
         Path file = Files.writeString(folder.resolve("broken.ipynb"), text);
-        String message = assertThrows(NotebookException.class, () -> NotebookFile.read(file)).getMessage();
+        String message = assertThrows(NotebookException.class, () -> NotebookFile.read(file))
+                .getMessage();
         assertTrue(message.startsWith(file + ": not a notebook"), message);
         assertTrue(message.contains(part), message);
         assertEquals(1, message.lines().count());
@@ -56,7 +61,8 @@ class NotebookFileTest {
         Path binary = Files.write(folder.resolve("binary.ipynb"), new byte[] {(byte) 0xff, (byte) 0xfe, 0, 1});
         Path missing = folder.resolve("missing.ipynb");
         for (Path file : List.of(empty, binary, missing)) {
-            String message = assertThrows(NotebookException.class, () -> NotebookFile.read(file)).getMessage();
+            String message = assertThrows(NotebookException.class, () -> NotebookFile.read(file))
+                    .getMessage();
             assertTrue(message.startsWith(file + ": "), message);
             assertEquals(1, message.lines().count());
         }
@@ -71,7 +77,8 @@ class NotebookFileTest {
 
     @Test
     void the_schema_check_itself_finds_a_wrong_notebook() throws IOException {
-        String wrong = NotebookFile.write(everyKind()).replace("\"output_type\": \"stream\"", "\"output_type\": \"flow\"");
+        String wrong =
+                NotebookFile.write(everyKind()).replace("\"output_type\": \"stream\"", "\"output_type\": \"flow\"");
         assertFalse(violations(wrong).isEmpty());
     }
 
@@ -84,7 +91,8 @@ class NotebookFileTest {
     @Test
     void a_file_is_laid_out_as_jupyter_lays_it_out() {
         // Source: json.dumps(indent=1, sort_keys=True, ensure_ascii=False) and a newline, as nbformat 5.5.0 writes it.
-        String expected = """
+        String expected =
+                """
                 {
                  "cells": [
                   {
@@ -115,9 +123,10 @@ class NotebookFileTest {
 
     @Test
     void pictures_pasted_into_prose_and_unknown_metadata_are_kept() {
-        String text = "{\"nbformat\": 4, \"metadata\": {\"own\": 1}, \"cells\": [{\"cell_type\": \"markdown\", \"id\": \"a\","
-                + " \"metadata\": {\"tags\": [\"keep\"]}, \"attachments\": {\"a.png\": {\"image/png\": \"AAAA\"}},"
-                + " \"source\": \"x\"}]}";
+        String text =
+                "{\"nbformat\": 4, \"metadata\": {\"own\": 1}, \"cells\": [{\"cell_type\": \"markdown\", \"id\": \"a\","
+                        + " \"metadata\": {\"tags\": [\"keep\"]}, \"attachments\": {\"a.png\": {\"image/png\": \"AAAA\"}},"
+                        + " \"source\": \"x\"}]}";
         String written = NotebookFile.write(Tidy.of(NotebookFile.parse(text, "x")));
         assertTrue(written.contains("\"a.png\"") && written.contains("\"keep\"") && written.contains("\"own\": 1"));
     }
@@ -127,10 +136,14 @@ class NotebookFileTest {
         Notebook plain = NotebookText.of("# Prose\n\nγ̇", "one", "two", "fail");
         MimeBundle rich = new MimeBundle(
                 Map.of(
-                        "text/plain", "a\nb",
-                        "text/html", "<p>a\n</p>",
-                        "image/png", "AAAA",
-                        FigureData.MIME, List.of(Map.of("title", "t", "n", 3L, "v", 0.5))),
+                        "text/plain",
+                        "a\nb",
+                        "text/html",
+                        "<p>a\n</p>",
+                        "image/png",
+                        "AAAA",
+                        FigureData.MIME,
+                        List.of(Map.of("title", "t", "n", 3L, "v", 0.5))),
                 Map.of("image/png", Map.of("width", 10L)),
                 "");
         List<Notebook.Cell> cells = List.of(
@@ -154,7 +167,9 @@ class NotebookFileTest {
         try (InputStream in = NotebookFileTest.class.getResourceAsStream("/nbformat/nbformat.v4.5.schema.json")) {
             JsonSchema schema =
                     JsonSchemaFactory.getInstance(SpecVersion.VersionFlag.V4).getSchema(in);
-            return schema.validate(notebook, InputFormat.JSON).stream().map(Object::toString).toList();
+            return schema.validate(notebook, InputFormat.JSON).stream()
+                    .map(Object::toString)
+                    .toList();
         }
     }
 }

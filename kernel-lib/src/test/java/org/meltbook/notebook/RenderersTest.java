@@ -78,7 +78,8 @@ class RenderersTest {
 
     @Test
     void a_prediction_shows_its_standing_and_what_to_mind() {
-        Prediction prediction = Prediction.atLeast("zero-shear viscosity", Quantity.VISCOSITY, 2e5, "no plateau <seen>");
+        Prediction prediction =
+                Prediction.atLeast("zero-shear viscosity", Quantity.VISCOSITY, 2e5, "no plateau <seen>");
         DisplayData shown = Renderers.all().render(prediction);
         String html = text(shown, MIMEType.TEXT_HTML);
         assertTrue(html.contains("at least 200000 Pa·s</strong>"), html);
@@ -89,7 +90,9 @@ class RenderersTest {
     @Test
     void figures_are_the_same_if_their_numbers_are_and_the_place_of_a_difference_is_named() {
         List<Object> stored = FigureData.of(List.of(figure(1)), List.of(""));
-        assertEquals(Optional.empty(), FigureData.difference("figure", stored, FigureData.of(List.of(figure(1)), List.of(""))));
+        assertEquals(
+                Optional.empty(),
+                FigureData.difference("figure", stored, FigureData.of(List.of(figure(1)), List.of(""))));
         // One unit in the last place of a double is what processors and Java versions may differ by.
         List<Object> close = FigureData.of(List.of(figure(Math.nextUp(1))), List.of(""));
         assertEquals(Optional.empty(), FigureData.difference("figure", stored, close));
@@ -129,7 +132,8 @@ class RenderersTest {
 
             @Override
             public List<Rows> rows() {
-                return List.of(Rows.titled("Numbers").numbers("eta", "Pa·s", 1, 2).build());
+                return List.of(
+                        Rows.titled("Numbers").numbers("eta", "Pa·s", 1, 2).build());
             }
 
             @Override

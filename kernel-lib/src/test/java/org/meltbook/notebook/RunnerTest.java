@@ -152,8 +152,7 @@ class RunnerTest {
             }
         });
         stopper.start();
-        List<RunResult> results =
-                assertTimeoutPreemptively(Duration.ofSeconds(20), () -> run(Plan.Stored.LEAVE));
+        List<RunResult> results = assertTimeoutPreemptively(Duration.ofSeconds(20), () -> run(Plan.Stored.LEAVE));
         progress.writeBytes("before".getBytes(StandardCharsets.UTF_8));
         stopper.join();
         assertTrue(results.stream().noneMatch(RunResult::isGood));
@@ -190,8 +189,7 @@ class RunnerTest {
         Files.createFile(folder.resolve("data/published/x.csv"));
         store("00-look", "folder data/published/x.csv", "folder published/x.csv");
         assertTrue(run(Plan.Stored.LEAVE).get(0).isGood());
-        NotebookException e =
-                assertThrows(NotebookException.class, () -> DataFolder.find("data/no.csv", notebooks));
+        NotebookException e = assertThrows(NotebookException.class, () -> DataFolder.find("data/no.csv", notebooks));
         assertTrue(e.getMessage().contains(notebooks.resolve("data/no.csv").toString()));
         assertTrue(e.getMessage().contains(folder.resolve("data/no.csv").toString()));
     }

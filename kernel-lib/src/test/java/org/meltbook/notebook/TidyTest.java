@@ -20,7 +20,8 @@ class TidyTest {
 
     @Test
     void valid_ids_are_kept_and_others_are_made_unique() {
-        List<String> ids = Tidy.of(untidy()).cells().stream().map(Notebook.Cell::id).toList();
+        List<String> ids =
+                Tidy.of(untidy()).cells().stream().map(Notebook.Cell::id).toList();
         assertEquals("load-sweep", ids.get(0));
         assertEquals(ids.size(), new HashSet<>(ids).size());
         assertTrue(ids.stream().allMatch(id -> id.matches("[A-Za-z0-9_-]{1,64}")), ids.toString());
@@ -29,9 +30,12 @@ class TidyTest {
     @Test
     void a_made_id_does_not_change_when_cells_move() {
         List<Notebook.Cell> cells = new ArrayList<>(untidy().cells());
-        String before = Tidy.of(new Notebook(cells, untidy().metadata())).cells().get(1).id();
+        String before =
+                Tidy.of(new Notebook(cells, untidy().metadata())).cells().get(1).id();
         cells.add(0, NotebookText.of("# new").cells().get(0));
-        assertEquals(before, Tidy.of(new Notebook(cells, untidy().metadata())).cells().get(2).id());
+        assertEquals(
+                before,
+                Tidy.of(new Notebook(cells, untidy().metadata())).cells().get(2).id());
     }
 
     @Test

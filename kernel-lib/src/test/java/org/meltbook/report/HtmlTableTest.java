@@ -14,7 +14,11 @@ class HtmlTableTest {
 
     @Test
     void every_text_of_a_table_is_escaped() {
-        Rows rows = Rows.titled(EVIL).text(EVIL, List.of(EVIL)).numbers(EVIL, EVIL, 1).note(EVIL).build();
+        Rows rows = Rows.titled(EVIL)
+                .text(EVIL, List.of(EVIL))
+                .numbers(EVIL, EVIL, 1)
+                .note(EVIL)
+                .build();
         String html = HtmlTable.of(rows);
         assertFalse(html.contains("<script"));
         assertFalse(html.contains("\" onclick"));
@@ -23,7 +27,10 @@ class HtmlTableTest {
 
     @Test
     void columns_have_heads_with_units_and_numbers_stand_right() {
-        String html = HtmlTable.of(Rows.titled("Fit").text("name", List.of("η₀")).numbers("value", "Pa·s", 51060).build());
+        String html = HtmlTable.of(Rows.titled("Fit")
+                .text("name", List.of("η₀"))
+                .numbers("value", "Pa·s", 51060)
+                .build());
         assertTrue(html.contains("<caption"));
         assertTrue(html.matches("(?s).*<th scope=\"col\" style=\"text-align:right[^>]*>value \\[Pa·s\\]</th>.*"));
         assertTrue(html.matches("(?s).*<td style=\"text-align:right[^>]*>51060</td>.*"));
@@ -32,7 +39,10 @@ class HtmlTableTest {
     @Test
     void a_long_table_says_how_much_of_it_is_shown() {
         Rows rows = Rows.titled("Sweep")
-                .numbers("row", "", IntStream.rangeClosed(1, 300).mapToDouble(i -> i).toArray())
+                .numbers(
+                        "row",
+                        "",
+                        IntStream.rangeClosed(1, 300).mapToDouble(i -> i).toArray())
                 .note("made up")
                 .build();
         String html = HtmlTable.of(rows);
@@ -47,6 +57,7 @@ class HtmlTableTest {
 
     @Test
     void a_table_without_rows_is_a_table_still() {
-        assertTrue(HtmlTable.of(Rows.titled("Nothing").text("lot", List.of()).build()).contains("<th"));
+        assertTrue(HtmlTable.of(Rows.titled("Nothing").text("lot", List.of()).build())
+                .contains("<th"));
     }
 }

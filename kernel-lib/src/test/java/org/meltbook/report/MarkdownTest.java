@@ -19,7 +19,9 @@ class MarkdownTest {
         // mfenced is not in MathML Core (W3C, section 2.1): browsers draw its content without the brackets.
         String html = markdown.html("$\\eta(\\dot\\gamma)$");
         assertFalse(html.contains("mfenced"));
-        assertTrue(html.matches("(?s).*<mo [^>]*>\\(</mo><mover accent=\"true\"><mi>γ</mi><mo>˙</mo></mover><mo [^>]*>\\)</mo>.*"),
+        assertTrue(
+                html.matches(
+                        "(?s).*<mo [^>]*>\\(</mo><mover accent=\"true\"><mi>γ</mi><mo>˙</mo></mover><mo [^>]*>\\)</mo>.*"),
                 html);
     }
 

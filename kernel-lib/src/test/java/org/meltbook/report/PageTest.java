@@ -25,7 +25,9 @@ class PageTest {
                 new Block.Code("var x = \"http://example.org\";", Optional.of(1)),
                 new Block.Picture("image/png", "AAAA", "a dot", "A dot.", 10));
         String markup = html.replaceAll("<a href=\"[^\"]*\">", "");
-        assertFalse(FETCHES.matcher(markup).find(), () -> FETCHES.matcher(markup).results().toList().toString());
+        assertFalse(
+                FETCHES.matcher(markup).find(),
+                () -> FETCHES.matcher(markup).results().toList().toString());
         assertTrue(html.contains("default-src 'none'"));
     }
 
@@ -61,7 +63,8 @@ class PageTest {
     @Test
     void the_index_leads_to_each_page_with_its_status() {
         String html = IndexPage.of(
-                "Notebooks", List.of(new IndexPage.Entry("First <look>", "00.html", "About melts.", "failed: x", false)));
+                "Notebooks",
+                List.of(new IndexPage.Entry("First <look>", "00.html", "About melts.", "failed: x", false)));
         assertTrue(html.contains("<a href=\"00.html\">First &lt;look&gt;</a>"));
         assertTrue(html.contains("About melts."));
         assertTrue(html.contains("status bad\">failed: x"));

@@ -24,7 +24,11 @@ record Column(String label, String symbol, String unit, List<Double> values) {
     /** The same column in kPa, if it is in Pa; else itself. */
     Column inKilopascal() {
         return unit.equals("Pa")
-                ? new Column(label, symbol, "kPa", values.stream().map(value -> value / 1000).toList())
+                ? new Column(
+                        label,
+                        symbol,
+                        "kPa",
+                        values.stream().map(value -> value / 1000).toList())
                 : this;
     }
 

@@ -72,7 +72,8 @@ enum Dialect {
     String write(Map<String, String> preamble, List<Column> readings) {
         List<Column> columns = written(readings);
         StringBuilder text = new StringBuilder();
-        preamble.forEach((key, value) -> text.append("# ").append(key).append(": ").append(value).append(lineEnd));
+        preamble.forEach((key, value) ->
+                text.append("# ").append(key).append(": ").append(value).append(lineEnd));
         for (Function<Column, String> heading : headings()) {
             text.append(line(columns, heading));
         }

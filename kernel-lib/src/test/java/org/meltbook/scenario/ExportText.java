@@ -19,8 +19,10 @@ record ExportText(List<String> comments, List<List<String>> headings, List<List<
 
     /** The content of a UTF-8 file with commas, semicolons (then with decimal commas) or tabs. */
     static ExportText of(Path file) throws IOException {
-        List<String> lines = Files.readString(file, StandardCharsets.UTF_8).lines().toList();
-        List<String> table = lines.stream().filter(line -> !line.startsWith("#")).toList();
+        List<String> lines =
+                Files.readString(file, StandardCharsets.UTF_8).lines().toList();
+        List<String> table =
+                lines.stream().filter(line -> !line.startsWith("#")).toList();
         String separator = separator(table.get(0));
         List<List<String>> headings = new ArrayList<>();
         List<List<String>> rows = new ArrayList<>();
@@ -29,7 +31,10 @@ record ExportText(List<String> comments, List<List<String>> headings, List<List<
             if (!cells.get(cells.size() - 1).matches("-?[0-9][-+0-9.,eE]*")) {
                 headings.add(cells);
             } else {
-                rows.add(separator.equals(";") ? cells.stream().map(c -> c.replace(',', '.')).toList() : cells);
+                rows.add(
+                        separator.equals(";")
+                                ? cells.stream().map(c -> c.replace(',', '.')).toList()
+                                : cells);
             }
         }
         List<String> comments = lines.stream()

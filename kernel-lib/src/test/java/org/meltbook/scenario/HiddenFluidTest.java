@@ -3,7 +3,6 @@ package org.meltbook.scenario;
 import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
-import java.util.List;
 import java.util.function.DoubleUnaryOperator;
 import org.apache.commons.math3.analysis.integration.gauss.GaussIntegrator;
 import org.apache.commons.math3.analysis.integration.gauss.GaussIntegratorFactory;
@@ -113,7 +112,8 @@ class HiddenFluidTest {
 
     private double gridMoment(int order) {
         double stiffer = truth.chalk()
-                .onModuli(truth.chalk().volumeFraction(truth.lot("A-00").chalk(), truth.shift().meltDensity()));
+                .onModuli(truth.chalk()
+                        .volumeFraction(truth.lot("A-00").chalk(), truth.shift().meltDensity()));
         return moment(order) / stiffer;
     }
 

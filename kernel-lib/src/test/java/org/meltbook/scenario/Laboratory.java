@@ -64,6 +64,7 @@ final class Laboratory {
 
     private static Column column(
             String label, String symbol, String unit, List<Point> points, ToDoubleFunction<Point> value) {
-        return new Column(label, symbol, unit, points.stream().mapToDouble(value).boxed().toList());
+        return new Column(
+                label, symbol, unit, points.stream().mapToDouble(value).boxed().toList());
     }
 }

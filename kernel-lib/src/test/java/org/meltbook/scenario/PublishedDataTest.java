@@ -64,7 +64,9 @@ class PublishedDataTest {
     })
     void moduli_are_complete(String name, int storage, int loss) throws IOException {
         ExportText text = ExportText.of(FOLDER.resolve(name));
-        assertEquals(List.of("quantity", "angular frequency [rad/s]", "modulus [Pa]"), text.headings().get(0));
+        assertEquals(
+                List.of("quantity", "angular frequency [rad/s]", "modulus [Pa]"),
+                text.headings().get(0));
         assertEquals(storage, count(text, "storage"));
         assertEquals(loss, count(text, "loss"));
         assertEquals(storage + loss, text.rows().size());

@@ -40,7 +40,8 @@ public final class ScenarioGenerator {
     /** Rewrites the exports in {@code data/scenario}; takes no arguments. */
     public static void main(String... arguments) throws IOException {
         Path folder = Repository.data().resolve("scenario");
-        for (Map.Entry<String, String> export : new ScenarioGenerator(Truth.load()).exports().entrySet()) {
+        for (Map.Entry<String, String> export :
+                new ScenarioGenerator(Truth.load()).exports().entrySet()) {
             Path file = folder.resolve(export.getKey());
             Files.createDirectories(file.getParent());
             Files.writeString(file, export.getValue(), StandardCharsets.UTF_8);
@@ -74,7 +75,9 @@ public final class ScenarioGenerator {
         boolean mislabelled = MISLABELLED.contains(name);
         return dialect.write(
                 preamble,
-                mislabelled ? readings.stream().map(Column::mislabelledKilopascal).toList() : readings);
+                mislabelled
+                        ? readings.stream().map(Column::mislabelledKilopascal).toList()
+                        : readings);
     }
 
     private static Map<String, String> preamble(Lot lot, int celsius) {

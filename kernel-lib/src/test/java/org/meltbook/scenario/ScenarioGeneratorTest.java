@@ -62,8 +62,14 @@ class ScenarioGeneratorTest {
     @Test
     void leaving_out_a_lot_moves_no_number_of_the_others() {
         Truth fewer = new Truth(
-                truth.seed(), truth.resin(), truth.nonlinear(), truth.shift(), truth.chalk(), truth.scission(),
-                truth.noise(), truth.lots().stream().filter(lot -> !lot.name().equals("R-04")).toList());
+                truth.seed(),
+                truth.resin(),
+                truth.nonlinear(),
+                truth.shift(),
+                truth.chalk(),
+                truth.scission(),
+                truth.noise(),
+                truth.lots().stream().filter(lot -> !lot.name().equals("R-04")).toList());
         SortedMap<String, String> rest = new ScenarioGenerator(fewer).exports();
         assertEquals(exports.size() - 4, rest.size());
         rest.forEach((name, text) -> assertEquals(exports.get(name), text, name));
@@ -73,7 +79,10 @@ class ScenarioGeneratorTest {
     void every_export_says_that_it_is_invented_and_is_small() throws IOException {
         for (String name : exports.keySet()) {
             ExportText text = ExportText.of(FOLDER.resolve(name));
-            assertEquals("invented data: Quarrel Bank Compounds does not exist", text.comments().get(0), name);
+            assertEquals(
+                    "invented data: Quarrel Bank Compounds does not exist",
+                    text.comments().get(0),
+                    name);
             assertTrue(text.rows().size() > 10 && text.rows().size() <= 40, name);
         }
     }
@@ -141,7 +150,8 @@ class ScenarioGeneratorTest {
         List<Protocol.Point> points = Protocol.frequencySweep();
         List<Double> residuals = new ArrayList<>();
         for (int row = 0; row < points.size(); row++) {
-            HiddenFluid melt = truth.fluid(truth.lot(lot), kelvin, points.get(row).time());
+            HiddenFluid melt =
+                    truth.fluid(truth.lot(lot), kelvin, points.get(row).time());
             double frequency = text.number(row, 0);
             double storage = melt.storage(frequency);
             double loss = melt.loss(frequency);
@@ -157,7 +167,8 @@ class ScenarioGeneratorTest {
         List<Protocol.Point> points = Protocol.flowCurve();
         List<Double> residuals = new ArrayList<>();
         for (int row = 0; row < points.size(); row++) {
-            HiddenFluid melt = truth.fluid(truth.lot(name.substring(0, 4)), 463.15, points.get(row).time());
+            HiddenFluid melt = truth.fluid(
+                    truth.lot(name.substring(0, 4)), 463.15, points.get(row).time());
             double rate = text.number(row, 0);
             double stress = melt.viscosity(rate) * rate;
             double difference = melt.firstNormalCoefficient(rate) * rate * rate;

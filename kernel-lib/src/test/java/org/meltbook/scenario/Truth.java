@@ -22,7 +22,13 @@ import java.util.Objects;
  * @param lots      the lots
  */
 record Truth(
-        long seed, Resin resin, Nonlinear nonlinear, Shift shift, Chalk chalk, Scission scission, Noise noise,
+        long seed,
+        Resin resin,
+        Nonlinear nonlinear,
+        Shift shift,
+        Chalk chalk,
+        Scission scission,
+        Noise noise,
         List<Lot> lots) {
 
     /**
@@ -49,8 +55,7 @@ record Truth(
      * Three peaks on a grid of {@code modes} relaxation times in s, evenly spaced on a log scale: the segments, which
      * do not feel how long a chain is, the backbone and the branches.
      */
-    record Resin(
-            double shortestTime, double longestTime, int modes, Peak segments, Peak backbone, Peak branches) {
+    record Resin(double shortestTime, double longestTime, int modes, Peak segments, Peak backbone, Peak branches) {
         /** The three peaks. */
         List<Peak> peaks() {
             return List.of(segments, backbone, branches);
@@ -86,7 +91,10 @@ record Truth(
      * passes the turnover time: {@code n(λ) = fast + (slow − fast) λ/(λ + turnover)}.
      */
     record Nonlinear(
-            double fastDamping, double slowDamping, double fastSecondNormal, double slowSecondNormal,
+            double fastDamping,
+            double slowDamping,
+            double fastSecondNormal,
+            double slowSecondNormal,
             double turnoverTime) {
         /** Damping exponent, no unit, of the mode with {@code time} in s at the reference temperature. */
         double damping(double time) {
@@ -154,8 +162,12 @@ record Truth(
 
     /** Standard deviations: a share of the true value and a floor in Pa, added in squares. */
     record Noise(
-            double modulusRelative, double modulusFloor, double stressRelative, double stressFloor,
-            double firstNormalRelative, double firstNormalFloor) {
+            double modulusRelative,
+            double modulusFloor,
+            double stressRelative,
+            double stressFloor,
+            double firstNormalRelative,
+            double firstNormalFloor) {
         /** Standard deviation in Pa of a storage or loss modulus in Pa. */
         double ofModulus(double modulus) {
             return StrictMath.hypot(modulusRelative * modulus, modulusFloor);
@@ -184,8 +196,14 @@ record Truth(
      * @param plot             what is odd about the lot, for the reader of the truth
      */
     record Lot(
-            String name, double regrind, double molarMassRatio, double branchWidthRatio, double dampingRatio,
-            double chalk, double scissionRate, String plot) {
+            String name,
+            double regrind,
+            double molarMassRatio,
+            double branchWidthRatio,
+            double dampingRatio,
+            double chalk,
+            double scissionRate,
+            String plot) {
         /** What a ratio of regrind to virgin comes to in the mixture, if the logarithms mix with the mass fraction. */
         double mixed(double ratio) {
             return StrictMath.pow(ratio, regrind);
@@ -245,7 +263,6 @@ record Truth(
         double length = lot.mixed(lot.molarMassRatio()) / (1 + broken);
         double onTimes = StrictMath.pow(length, scission.viscosityExponent());
         return resin.with(
-                resin.backbone().times(onTimes, 1),
-                resin.branches().times(onTimes, lot.mixed(lot.branchWidthRatio())));
+                resin.backbone().times(onTimes, 1), resin.branches().times(onTimes, lot.mixed(lot.branchWidthRatio())));
     }
 }
