@@ -44,14 +44,14 @@ record TerminalZone(double lossSlope, double storageSlope) {
         return givesViscosity() ? "terminal zone reached by G″, NOT by G′" : "terminal zone NOT reached";
     }
 
-    /** The slope of G″ found and asked for. */
-    String lossWords() {
+    /** The slope found and asked for where η₀ is refused. */
+    String againstViscosity() {
         return words("G″", lossSlope, LOSS_SLOPE, "1");
     }
 
-    /** The slope of G′ found and asked for. */
-    String storageWords() {
-        return words("G′", storageSlope, STORAGE_SLOPE, "2");
+    /** The slope found and asked for where Jₑ⁰ is refused. */
+    String againstCompliance() {
+        return storageSlope < STORAGE_SLOPE ? words("G′", storageSlope, STORAGE_SLOPE, "2") : againstViscosity();
     }
 
     private static String words(String symbol, double slope, double asked, String terminal) {

@@ -91,11 +91,10 @@ final class ZeroRateLimits {
         double both = joint.spectrum().zeroShearViscosity();
         Interval interval = loss.interval(RelaxationSpectrum::zeroShearViscosity);
         return Prediction.of(VISCOSITY, Quantity.VISCOSITY, value, interval.low(), interval.high())
-                .minding(
-                        "the two moduli do not quite belong together: this is from the loss modulus alone; the spectrum"
-                                + " of both gives " + NumberText.of(both) + " Pa·s, "
-                                + NumberText.of(100 * Math.abs(both / value - 1), 2) + " % "
-                                + (both > value ? "more" : "less"));
+                .minding("the two moduli do not quite belong together: the value is that of the loss modulus alone, the"
+                        + " spectrum of both gives " + NumberText.of(both) + " Pa·s, "
+                        + NumberText.of(100 * Math.abs(both / value - 1), 2) + " % "
+                        + (both > value ? "more" : "less"));
     }
 
     /** Σ g λ² from the storage modulus alone, η₀ from the loss modulus alone. */
@@ -126,8 +125,8 @@ final class ZeroRateLimits {
                 VISCOSITY,
                 Quantity.VISCOSITY,
                 joint.interval(spectrum -> spectrum.complexViscosity(at)).low(),
-                NOT_REACHED + zone.lossWords() + "; the bound is " + bound("|η*|", at) + "; the fitted spectrum gives "
-                        + NumberText.of(limit) + " Pa·s (extrapolated)");
+                NOT_REACHED + zone.againstViscosity() + "; the bound is " + bound("|η*|", at)
+                        + "; the fitted spectrum gives " + NumberText.of(limit) + " Pa·s (extrapolated)");
     }
 
     /** J′ = G′/(G′² + G″²) never exceeds Jₑ⁰, so its value at the low end of the window is a bound. */
@@ -139,8 +138,8 @@ final class ZeroRateLimits {
                 COMPLIANCE,
                 Quantity.COMPLIANCE,
                 joint.interval(spectrum -> storageCompliance(spectrum, at)).low(),
-                NOT_REACHED + zone.storageWords() + "; the bound is " + bound("J′", at) + "; the fitted spectrum gives "
-                        + NumberText.of(limit) + " 1/Pa (extrapolated)");
+                NOT_REACHED + zone.againstCompliance() + "; the bound is " + bound("J′", at)
+                        + "; the fitted spectrum gives " + NumberText.of(limit) + " 1/Pa (extrapolated)");
     }
 
     private static double storageCompliance(RelaxationSpectrum spectrum, double frequency) {

@@ -140,18 +140,31 @@ class SpectrumFitTest {
         }
     }
 
-    /** The slowest mode of the melt has λ = 1000 s: a window that ends at 8e-4 rad/s cuts its grid off just there. */
+    /** Three log-normal peaks, Σ g and median λ invented: segments, backbone and a long tail of branches. */
+    private static RelaxationSpectrum branched() {
+        Doubles times = Doubles.logSpaced(1e-6, 1e3, 46);
+        return RelaxationSpectrum.of(
+                times.map(t -> peak(t, 3e5, 1e-4, 1.8) + peak(t, 8e4, 0.01, 1.8) + peak(t, 1.2e4, 0.6, 1.5)), times);
+    }
+
+    private static double peak(double time, double strength, double centre, double width) {
+        double z = Math.log(time / centre) / width;
+        return strength / (5 * width) * Math.exp(-z * z / 2);
+    }
+
+    /**
+     * Jₑ⁰ hangs on the tail, which a window down to 1.5e-3 rad/s cuts off: refits on the grid that ends there held the
+     * truth 12 times of 19 only.
+     */
     @Test
     void the_interval_of_the_compliance_sees_the_end_of_the_grid() {
+        RelaxationSpectrum branched = branched();
         Random random = new Random(8);
-        List<SpectrumFit> fits = fits(20, () -> scattered(MELT, 8e-4, 0.02, random)).stream()
+        List<SpectrumFit> fits = fits(20, () -> scattered(branched, 1.5e-3, 0.02, random)).stream()
                 .filter(fit -> fit.recoverableCompliance().hasValue())
                 .toList();
-        assertTrue(fits.size() >= 10, fits.size() + " plain compliances");
-        atLeast(
-                (int) Math.ceil(0.85 * fits.size()),
-                fits,
-                fit -> holds(fit.recoverableCompliance(), MELT.recoverableCompliance()));
+        assertTrue(fits.size() >= 15, fits.size() + " plain compliances");
+        atLeast(17, fits, fit -> holds(fit.recoverableCompliance(), branched.recoverableCompliance()));
     }
 
     @Test
