@@ -7,6 +7,11 @@ import java.util.stream.DoubleStream;
 import java.util.stream.IntStream;
 import org.apache.commons.math3.analysis.solvers.BrentSolver;
 import org.meltbook.base.Doubles;
+import org.meltbook.base.NumberText;
+import org.meltbook.base.Rows;
+import org.meltbook.figure.Exhibit;
+import org.meltbook.figure.Figure;
+import org.meltbook.fit.PredictionRows;
 import org.meltbook.units.Prediction;
 import org.meltbook.units.Quantity;
 
@@ -16,7 +21,7 @@ import org.meltbook.units.Quantity;
  * @param frequency angular frequency in rad/s
  * @param modulus   G′ = G″ there, in Pa
  */
-public record Crossover(Prediction frequency, Prediction modulus) {
+public record Crossover(Prediction frequency, Prediction modulus) implements Exhibit {
     /** The crossovers of a spectrum at angular frequencies in rad/s between {@code low} and {@code high}, rising. */
     static List<Crossover> of(Refitted fit, double low, double high) {
         if (!(high > low)) {
@@ -72,7 +77,23 @@ public record Crossover(Prediction frequency, Prediction modulus) {
     }
 
     @Override
+    public String headline() {
+        return "The moduli cross at ω = " + NumberText.of(frequency.value()) + " rad/s with G′ = G″ = "
+                + NumberText.of(modulus.value()) + " Pa.";
+    }
+
+    @Override
+    public List<Rows> rows() {
+        return List.of(PredictionRows.of("Crossover", List.of(frequency, modulus)));
+    }
+
+    @Override
+    public List<Figure> figures() {
+        return List.of();
+    }
+
+    @Override
     public String toString() {
-        return frequency + "; " + modulus;
+        return headline();
     }
 }

@@ -241,7 +241,11 @@ class BadInputTest {
                 "found only shear rate in the headings 'shear rate [1/s]', 'goo [Pa]'",
                 "shear rate [1/s],goo [Pa]",
                 "1,2");
-        refused("for a flow curve, found none of these in the headings", "a,b", "1,2");
+        refused(
+                "or two of shear rate, shear stress and viscosity for a flow curve, or relaxation time and relaxation modulus"
+                        + " for a table of Maxwell modes, found none of these in the headings 'a', 'b'",
+                "a,b",
+                "1,2");
         refused("expected a header that names the columns, found a row of numbers", "0.1,1000", "1,900");
     }
 

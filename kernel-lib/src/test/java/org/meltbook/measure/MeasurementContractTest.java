@@ -21,15 +21,22 @@ import org.meltbook.base.Rows;
 import org.meltbook.units.LabUnit;
 import org.meltbook.units.Quantity;
 
-/** What {@link Measurement} and its exhibit side promise, for each implementation. A new one adds a line below. */
+/**
+ * What {@link Measurement} and its exhibit side promise, for each kind of the catalogue, made of all that it uses, and
+ * for the forms that a kind has besides.
+ */
 class MeasurementContractTest {
     private static final Conditions CONDITIONS = new Conditions(
             "QB-40 lot A-00 (invented)", OptionalDouble.of(463.15), "made in the test", "", Map.of("operator", "J."));
 
     static Stream<Arguments> measurements() {
+        Stream<Arguments> kinds = MeasurementKind.all().stream()
+                .map(kind -> Arguments.of(kind.made().apply(readings(kind.uses().toArray(Quantity[]::new)))));
+        return Stream.concat(kinds, otherForms());
+    }
+
+    private static Stream<Arguments> otherForms() {
         return Stream.of(
-                Arguments.of(readings(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS, Quantity.LOSS_MODULUS)
-                        .frequencySweep()),
                 Arguments.of(Readings.frequencySweep(
                         readings(Quantity.ANGULAR_FREQUENCY, Quantity.STORAGE_MODULUS),
                         shifted(Quantity.ANGULAR_FREQUENCY, Quantity.LOSS_MODULUS))),

@@ -10,6 +10,7 @@ import java.util.stream.Stream;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
 import org.junit.jupiter.params.provider.MethodSource;
+import org.meltbook.house.Repository;
 import org.meltbook.intake.Exports;
 import org.meltbook.intake.Intake;
 import org.meltbook.measure.Curve;
@@ -26,7 +27,6 @@ class DataComeInTest {
     static List<Path> measurements() throws IOException {
         try (Stream<Path> files = Files.walk(DATA)) {
             return files.filter(file -> file.toString().matches(".*\\.(csv|txt)"))
-                    .filter(file -> !file.getFileName().toString().startsWith("ldpe")) // a spectrum, no measurement
                     .sorted()
                     .toList();
         }

@@ -7,6 +7,7 @@ import java.nio.file.Path;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.meltbook.house.Repository;
 import org.meltbook.intake.Exports;
 import org.meltbook.spectrum.SpectrumFit;
 import org.meltbook.units.Prediction;

@@ -14,6 +14,7 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
 import org.junit.jupiter.params.provider.MethodSource;
+import org.meltbook.house.Repository;
 
 /** The published measurements are whole, name their source, and say what their papers say. */
 class PublishedDataTest {

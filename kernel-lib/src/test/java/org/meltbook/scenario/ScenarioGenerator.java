@@ -11,6 +11,7 @@ import java.util.Optional;
 import java.util.Set;
 import java.util.SortedMap;
 import java.util.TreeMap;
+import org.meltbook.house.Repository;
 import org.meltbook.scenario.Truth.Lot;
 
 /**

@@ -19,6 +19,7 @@ import org.apache.commons.math3.distribution.ChiSquaredDistribution;
 import org.apache.commons.math3.distribution.NormalDistribution;
 import org.apache.commons.math3.stat.inference.KolmogorovSmirnovTest;
 import org.junit.jupiter.api.Test;
+import org.meltbook.house.Repository;
 
 /** The checked-in exports are what the generator writes, and scatter about the truth as stated. */
 class ScenarioGeneratorTest {

@@ -1,15 +1,13 @@
 package org.meltbook.spectrum;
 
+import java.nio.file.Path;
 import java.util.List;
-import org.meltbook.base.Doubles;
-import org.meltbook.measure.Conditions;
-import org.meltbook.measure.Curve;
+import org.meltbook.house.Repository;
+import org.meltbook.intake.Exports;
+import org.meltbook.measure.FlowCurve;
 import org.meltbook.measure.FrequencySweep;
-import org.meltbook.measure.Series;
-import org.meltbook.numeric.ReferenceTable;
-import org.meltbook.units.Quantity;
 
-/** Published data of the reference files as measurements and spectra. */
+/** The published data of the repository, read as a notebook reads them. Each file names its source. */
 public final class PublishedMelts {
     private PublishedMelts() {}
 
@@ -17,38 +15,31 @@ public final class PublishedMelts {
      * Narrow polystyrene, 290 kg/mol, 180 °C: Schausberger, Schindlauer, Janeschitz-Kriegl, Rheol. Acta 24 (1985) 220.
      */
     static FrequencySweep narrow290() {
-        return sweep("polystyrene 290 kg/mol", "saos_ps_290k_narrow_180C.csv");
+        return Exports.read(file("polystyrene-290k-schausberger-1985.csv")).frequencySweep();
     }
 
     /** Narrow polystyrene, 750 kg/mol, 180 °C: same paper. */
     static FrequencySweep narrow750() {
-        return sweep("polystyrene 750 kg/mol", "saos_ps_750k_narrow_180C.csv");
+        return Exports.read(file("polystyrene-750k-schausberger-1985.csv")).frequencySweep();
     }
 
     /** Broad polystyrene, 390 kg/mol, 160 °C: Montfort, Marin, Monge, Macromolecules 17 (1984) 1551. */
     static FrequencySweep broad390() {
-        return sweep("polystyrene 390 kg/mol, broad", "saos_ps_390k_polydisperse_160C.csv");
+        return Exports.read(file("polystyrene-390k-montfort-1984.csv")).frequencySweep();
     }
 
-    private static FrequencySweep sweep(String sample, String file) {
-        ReferenceTable table = ReferenceTable.of(file);
-        return FrequencySweep.of(
-                Conditions.of(sample, file),
-                curve(table.where("quantity", "storage"), Quantity.STORAGE_MODULUS),
-                curve(table.where("quantity", "loss"), Quantity.LOSS_MODULUS),
-                List.of());
-    }
-
-    private static Curve curve(ReferenceTable table, Quantity modulus) {
-        return Curve.of(
-                Series.of(Quantity.ANGULAR_FREQUENCY, table.numbers("angular_frequency_rad_per_s")),
-                Series.of(modulus, table.numbers("modulus_Pa")));
+    /** Silicone with corundum sand at six loadings: Zwaan and others (2018), doi 10.5880/fidgeo.2018.023. */
+    public static List<FlowCurve> filledSilicone() {
+        return Exports.read(file("silicone-corundum-zwaan-2018.csv")).flowCurves();
     }
 
     /** LDPE Melt I, 150 °C: Laun, Rheol. Acta 17 (1978) 1, from memory. */
     public static RelaxationSpectrum meltOne() {
-        ReferenceTable table = ReferenceTable.of("ldpe_melt_I_spectrum_150C.csv");
         return RelaxationSpectrum.of(
-                Doubles.of(table.numbers("modulus_Pa")), Doubles.of(table.numbers("relaxation_time_s")));
+                Exports.read(file("ldpe-melt-i-laun-1978.csv")).modeTable());
+    }
+
+    private static Path file(String name) {
+        return Repository.data().resolve("published").resolve(name);
     }
 }

@@ -1,14 +1,14 @@
-package org.meltbook.scenario;
+package org.meltbook.house;
 
 import java.nio.file.Files;
 import java.nio.file.Path;
 
 /** Where the checked-in data lie, whichever folder of the repository the program was started in. */
-final class Repository {
+public final class Repository {
     private Repository() {}
 
     /** The {@code data} folder of the repository. */
-    static Path data() {
+    public static Path data() {
         for (Path folder = Path.of("").toAbsolutePath(); folder != null; folder = folder.getParent()) {
             if (Files.isRegularFile(folder.resolve("data/README.md"))) {
                 return folder.resolve("data");
