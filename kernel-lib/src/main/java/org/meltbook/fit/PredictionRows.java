@@ -11,7 +11,7 @@ public final class PredictionRows {
 
     /** One row a prediction. */
     public static Rows of(String title, List<Prediction> predictions) {
-        return Rows.titled(title)
+        Rows.Builder table = Rows.titled(title)
                 .text("number", predictions.stream().map(Prediction::name).toList())
                 .text("value", predictions.stream().map(PredictionRows::value).toList())
                 .text(
@@ -19,13 +19,10 @@ public final class PredictionRows {
                         predictions.stream().map(PredictionRows::interval).toList())
                 .text(
                         "unit",
-                        predictions.stream().map(p -> p.quantity().siUnit()).toList())
-                .text(
-                        "to mind",
-                        predictions.stream()
-                                .map(p -> String.join("; ", p.cautions()))
-                                .toList())
-                .build();
+                        predictions.stream().map(p -> p.quantity().siUnit()).toList());
+        List<String> minding =
+                predictions.stream().map(p -> String.join("; ", p.cautions())).toList();
+        return (minding.stream().allMatch(String::isEmpty) ? table : table.text("to mind", minding)).build();
     }
 
     private static String value(Prediction prediction) {

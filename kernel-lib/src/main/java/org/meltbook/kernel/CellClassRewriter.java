@@ -49,15 +49,20 @@ final class CellClassRewriter {
 
     private static final class Guarded extends MethodVisitor {
         private final Set<Label> passed = new HashSet<>();
+        private boolean entered;
 
         Guarded(MethodVisitor next) {
             super(Opcodes.ASM9, next);
         }
 
+        /** The first line of a method is its entry: a check before it would belong to no line of the cell. */
         @Override
-        public void visitCode() {
-            super.visitCode();
-            check();
+        public void visitLineNumber(int line, Label start) {
+            super.visitLineNumber(line, start);
+            if (!entered) {
+                entered = true;
+                check();
+            }
         }
 
         @Override
