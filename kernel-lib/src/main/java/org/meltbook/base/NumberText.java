@@ -3,7 +3,6 @@ package org.meltbook.base;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.math.RoundingMode;
-import java.util.Locale;
 
 /** The one formatter of numbers: four significant digits, root locale, the same text on every machine. */
 public final class NumberText {
@@ -79,10 +78,11 @@ public final class NumberText {
         return plain.replace('-', '−');
     }
 
-    private static String raised(int exponent) {
-        StringBuilder text = new StringBuilder(exponent < 0 ? "⁻" : "");
-        for (char digit : String.format(Locale.ROOT, "%d", Math.abs(exponent)).toCharArray()) {
-            text.append(RAISED.charAt(digit - '0'));
+    /** The whole number in raised digits, as it stands behind a ten: {@code ⁻⁵}. */
+    public static String raised(int exponent) {
+        StringBuilder text = new StringBuilder();
+        for (char c : Integer.toString(exponent).toCharArray()) {
+            text.append(c == '-' ? '⁻' : RAISED.charAt(c - '0'));
         }
         return text.toString();
     }

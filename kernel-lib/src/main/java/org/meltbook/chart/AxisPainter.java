@@ -4,10 +4,12 @@ import java.awt.BasicStroke;
 import java.awt.Font;
 import java.awt.Graphics2D;
 import java.awt.geom.Line2D;
+import java.awt.geom.Point2D;
 import java.awt.geom.Rectangle2D;
 import java.util.List;
 import org.knowm.xchart.internal.chartpart.TexRenderer;
 import org.knowm.xchart.style.XYStyler;
+import org.meltbook.chart.Lettering.Align;
 
 /** Draws grid, frame, ticks, labels and titles of both axes of a chart, and keeps the room that they need. */
 final class AxisPainter {
@@ -103,12 +105,13 @@ final class AxisPainter {
             g.draw(new Line2D.Double(x, frame.getMaxY(), x, frame.getMaxY() - length));
             g.draw(new Line2D.Double(x, frame.getMinY(), x, frame.getMinY() + length));
             double half = Lettering.width(tick.label(), labelFont()) / 2;
-            Lettering.draw(g, tick.label(), labelFont(), 0.5, Math.min(exact, chart.getWidth() - 3 - half), baseline);
+            Point2D place = new Point2D.Double(Math.min(exact, chart.getWidth() - 3 - half), baseline);
+            Lettering.draw(g, tick.label(), labelFont(), Align.MIDDLE, place);
         }
         Font font = chart.getStyler().getAxisTitleFont();
         double titleLine = baseline + TITLE_GAP + font.getSize2D();
         String title = Lettering.within(chart.getXAxisTitle(), font, frame.getWidth());
-        Lettering.draw(g, title, font, 0.5, frame.getCenterX(), titleLine);
+        Lettering.draw(g, title, font, Align.MIDDLE, new Point2D.Double(frame.getCenterX(), titleLine));
     }
 
     private void paintY(Graphics2D g, Rectangle2D frame, List<Tick> ticks) {
@@ -119,7 +122,8 @@ final class AxisPainter {
             g.draw(new Line2D.Double(frame.getMinX(), y, frame.getMinX() + length, y));
             g.draw(new Line2D.Double(frame.getMaxX(), y, frame.getMaxX() - length, y));
             double baseline = exact + DIGIT_HEIGHT / 2 * labelFont().getSize2D();
-            Lettering.draw(g, tick.label(), labelFont(), 1, frame.getMinX() - GAP, baseline);
+            Lettering.draw(
+                    g, tick.label(), labelFont(), Align.RIGHT, new Point2D.Double(frame.getMinX() - GAP, baseline));
         }
         Font font = chart.getStyler().getAxisTitleFont();
         double titleLine = chart.getStyler().getChartPadding() + font.getSize2D() * 0.8;

@@ -11,7 +11,6 @@ import org.knowm.xchart.XYSeries;
 import org.knowm.xchart.XYSeries.XYSeriesRenderStyle;
 import org.knowm.xchart.style.lines.SeriesLines;
 import org.knowm.xchart.style.markers.SeriesMarkers;
-import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.chart.Placement.Track;
 import org.meltbook.figure.Axis;
@@ -112,20 +111,17 @@ public final class Drawing {
         int start = 0;
         for (int i = 0; i <= track.x().size(); i++) {
             if (i == track.x().size() || Double.isNaN(track.low().at(i))) {
-                add(outline, track.x(), track.high(), start, i, false);
-                add(outline, track.x(), track.low(), start, i, true);
+                for (int k = start; k < i; k++) {
+                    outline.add(new double[] {track.x().at(k), track.high().at(k)});
+                }
+                for (int k = i - 1; k >= start; k--) {
+                    outline.add(new double[] {track.x().at(k), track.low().at(k)});
+                }
                 outline.add(new double[] {track.x().at(Math.min(i, track.x().size() - 1)), Double.NaN});
                 start = i + 1;
             }
         }
         return outline;
-    }
-
-    private static void add(List<double[]> outline, Doubles x, Doubles y, int from, int to, boolean backwards) {
-        for (int k = from; k < to; k++) {
-            int i = backwards ? to - 1 - (k - from) : k;
-            outline.add(new double[] {x.at(i), y.at(i)});
-        }
     }
 
     /** The caption of the figure, followed by a sentence for each kind of number that is not where it belongs. */

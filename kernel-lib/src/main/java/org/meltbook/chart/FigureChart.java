@@ -3,12 +3,14 @@ package org.meltbook.chart;
 import java.awt.Font;
 import java.awt.Graphics2D;
 import java.awt.RenderingHints;
+import java.awt.geom.Point2D;
 import java.awt.geom.Rectangle2D;
 import java.util.List;
 import java.util.Locale;
 import org.knowm.xchart.XYChart;
 import org.knowm.xchart.style.Styler.LegendPosition;
 import org.knowm.xchart.style.XYStyler;
+import org.meltbook.chart.Lettering.Align;
 
 /**
  * A chart of the chart library in our theme. The library keeps the series and their styles, knows where each number
@@ -60,7 +62,8 @@ final class FigureChart extends XYChart {
         g.setColor(Palette.INK);
         double line = bounds.getCenterY();
         for (String remark : remarks) {
-            Lettering.draw(g, remark, ChartFont.of(LABEL_SIZE), 0.5, bounds.getCenterX(), line);
+            Point2D place = new Point2D.Double(bounds.getCenterX(), line);
+            Lettering.draw(g, remark, ChartFont.of(LABEL_SIZE), Align.MIDDLE, place);
             line += 1.6 * LABEL_SIZE;
         }
     }

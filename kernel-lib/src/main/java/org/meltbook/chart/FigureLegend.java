@@ -3,6 +3,7 @@ package org.meltbook.chart;
 import java.awt.Font;
 import java.awt.Graphics2D;
 import java.awt.geom.Line2D;
+import java.awt.geom.Point2D;
 import java.awt.geom.Rectangle2D;
 import java.util.ArrayList;
 import java.util.List;
@@ -12,6 +13,7 @@ import org.knowm.xchart.XYSeries;
 import org.knowm.xchart.XYSeries.XYSeriesRenderStyle;
 import org.knowm.xchart.internal.chartpart.Legend_Marker;
 import org.knowm.xchart.style.XYStyler;
+import org.meltbook.chart.Lettering.Align;
 
 /** A legend in columns below the axis title, where it covers nothing. */
 final class FigureLegend extends Legend_Marker<XYStyler, XYSeries> {
@@ -77,7 +79,8 @@ final class FigureLegend extends Legend_Marker<XYStyler, XYSeries> {
         entry.series().forEach(series -> paintPath(g, series, x, y));
         entry.series().forEach(series -> paintMarker(g, series, x, y));
         g.setColor(Palette.INK);
-        Lettering.draw(g, entry.label(), font(), 0, x + GLYPH + GLYPH_GAP, y + 0.36 * font().getSize2D());
+        Point2D place = new Point2D.Double(x + GLYPH + GLYPH_GAP, y + 0.36 * font().getSize2D());
+        Lettering.draw(g, entry.label(), font(), Align.LEFT, place);
     }
 
     private List<Entry> entries() {

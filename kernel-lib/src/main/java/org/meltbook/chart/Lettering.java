@@ -6,6 +6,7 @@ import java.awt.Shape;
 import java.awt.font.FontRenderContext;
 import java.awt.font.TextLayout;
 import java.awt.geom.AffineTransform;
+import java.awt.geom.Point2D;
 
 /** Measures and draws text as outlines, so that letters are the same on every machine. */
 final class Lettering {
@@ -13,6 +14,19 @@ final class Lettering {
     private static final String ELLIPSIS = "…";
 
     private Lettering() {}
+
+    /** Which part of a text stands at the place where it is drawn. */
+    enum Align {
+        LEFT(0),
+        MIDDLE(0.5),
+        RIGHT(1);
+
+        private final double share;
+
+        Align(double share) {
+            this.share = share;
+        }
+    }
 
     /** Width of the text in pixels; zero if blank. */
     static double width(String text, Font font) {
@@ -34,12 +48,12 @@ final class Lettering {
     /**
      * Draws the text in the colour of {@code g}.
      *
-     * @param align 0 if {@code x} is its left end, 0.5 its middle, 1 its right end
-     * @param x     pixel along x
-     * @param y     pixel of the base line
+     * @param align which part of the text stands at {@code place}
+     * @param place pixel on the base line
      */
-    static void draw(Graphics2D g, String text, Font font, double align, double x, double y) {
-        draw(g, text, font, AffineTransform.getTranslateInstance(x - align * width(text, font), y));
+    static void draw(Graphics2D g, String text, Font font, Align align, Point2D place) {
+        double left = place.getX() - align.share * width(text, font);
+        draw(g, text, font, AffineTransform.getTranslateInstance(left, place.getY()));
     }
 
     /** Draws the text upwards, its middle at {@code y} and its base line at {@code x}. */

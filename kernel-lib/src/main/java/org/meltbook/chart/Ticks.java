@@ -6,6 +6,7 @@ import java.math.RoundingMode;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.function.ToDoubleFunction;
+import org.meltbook.base.NumberText;
 
 /**
  * Chooses the ticks of an axis and writes their numbers. A logarithmic axis over some decades is labelled at decades,
@@ -142,7 +143,7 @@ final class Ticks {
         if (order < -3 || order > 5) {
             int digits = Math.max(0, order - order(step));
             BigDecimal mantissa = value.movePointLeft(order).setScale(digits, RoundingMode.HALF_EVEN);
-            return minus(mantissa.toPlainString()) + "×10" + raised(order);
+            return minus(mantissa.toPlainString()) + "×10" + NumberText.raised(order);
         }
         return minus(value.setScale(Math.max(0, -order(step)), RoundingMode.HALF_EVEN)
                 .toPlainString());
@@ -175,18 +176,10 @@ final class Ticks {
     }
 
     private static String power(double multiple, int power) {
-        return (multiple == 1 ? "" : plain(multiple) + "×") + "10" + raised(power);
+        return (multiple == 1 ? "" : plain(multiple) + "×") + "10" + NumberText.raised(power);
     }
 
     private static String minus(String plain) {
         return plain.replace('-', '−');
-    }
-
-    private static String raised(int exponent) {
-        StringBuilder text = new StringBuilder();
-        for (char c : Integer.toString(exponent).toCharArray()) {
-            text.append(c == '-' ? '⁻' : "⁰¹²³⁴⁵⁶⁷⁸⁹".charAt(c - '0'));
-        }
-        return text.toString();
     }
 }

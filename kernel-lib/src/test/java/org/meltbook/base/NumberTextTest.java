@@ -69,6 +69,13 @@ class NumberTextTest {
     }
 
     @Test
+    void raises_the_digits_of_a_power() {
+        assertEquals("⁻³⁰⁸", NumberText.raised(-308));
+        assertEquals("⁰", NumberText.raised(0));
+        assertEquals("¹²", NumberText.raised(12));
+    }
+
+    @Test
     void reads_the_same_under_every_default_locale() {
         Locale before = Locale.getDefault();
         try {
