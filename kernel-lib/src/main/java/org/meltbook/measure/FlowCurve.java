@@ -3,7 +3,6 @@ package org.meltbook.measure;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
 import org.meltbook.figure.Figure;
@@ -119,17 +118,13 @@ public final class FlowCurve implements Measurement {
 
     /** The same curve with one more note. */
     public FlowCurve noted(Note note) {
-        List<Note> longer = new ArrayList<>(trail);
-        longer.add(note);
-        return new FlowCurve(conditions, stress, viscosity, firstNormalStress, longer);
+        return new FlowCurve(conditions, stress, viscosity, firstNormalStress, Trail.longer(trail, note));
     }
 
     @Override
     public String headline() {
-        return "Flow curve" + (conditions.sample().isEmpty() ? "" : " of " + conditions.sample()) + ": "
-                + viscosity.size() + " points, "
-                + NumberText.of(viscosity.x().values().smallest()) + " to "
-                + NumberText.of(viscosity.x().values().largest()) + " 1/s"
+        return "Flow curve" + Trail.of(conditions) + ": " + viscosity.size() + " points, "
+                + Trail.range(List.of(viscosity))
                 + (firstNormalStress.isPresent() ? ", with first normal stress difference" : "")
                 + Trail.temperature(conditions) + Trail.setAside(List.of(viscosity)) + ".";
     }
@@ -155,7 +150,7 @@ public final class FlowCurve implements Measurement {
     }
 
     private String title() {
-        return conditions.sample().isEmpty() ? "flow curve" : conditions.sample();
+        return Trail.title(this);
     }
 
     @Override

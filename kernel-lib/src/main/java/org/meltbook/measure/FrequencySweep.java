@@ -1,11 +1,11 @@
 package org.meltbook.measure;
 
-import java.util.ArrayList;
 import java.util.List;
+import java.util.stream.DoubleStream;
 import org.meltbook.base.Doubles;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
+import org.meltbook.figure.Axis;
 import org.meltbook.figure.Figure;
 import org.meltbook.units.Quantity;
 
@@ -93,26 +93,15 @@ public final class FrequencySweep implements Measurement {
 
     /** The same sweep with one more note. */
     public FrequencySweep noted(Note note) {
-        List<Note> longer = new ArrayList<>(trail);
-        longer.add(note);
-        return new FrequencySweep(conditions, storage, loss, longer);
+        return new FrequencySweep(conditions, storage, loss, Trail.longer(trail, note));
     }
 
     @Override
     public String headline() {
-        return "Frequency sweep" + (conditions.sample().isEmpty() ? "" : " of " + conditions.sample()) + ": "
-                + storage.size() + " storage and " + loss.size() + " loss moduli, "
+        return "Frequency sweep" + Trail.of(conditions) + ": " + storage.size() + " storage and " + loss.size()
+                + " loss moduli, "
                 + (sharesFrequencies() ? "at common frequencies" : "at frequencies of their own") + ", "
-                + NumberText.of(lowest()) + " to " + NumberText.of(highest()) + " rad/s"
-                + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";
-    }
-
-    private double lowest() {
-        return Math.min(storage.x().values().smallest(), loss.x().values().smallest());
-    }
-
-    private double highest() {
-        return Math.max(storage.x().values().largest(), loss.x().values().largest());
+                + Trail.range(curves()) + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";
     }
 
     @Override
@@ -129,7 +118,7 @@ public final class FrequencySweep implements Measurement {
     }
 
     private String title() {
-        return conditions.sample().isEmpty() ? "frequency sweep" : conditions.sample();
+        return Trail.title(this);
     }
 
     @Override
@@ -138,7 +127,7 @@ public final class FrequencySweep implements Measurement {
         Curve usableLoss = loss.usable();
         Figure.Builder figure = Figure.titled("Moduli of " + title())
                 .x(Quantity.ANGULAR_FREQUENCY)
-                .y(new org.meltbook.figure.Axis("moduli G′, G″", "Pa", org.meltbook.figure.Axis.Scale.LOG))
+                .y(new Axis("moduli G′, G″", "Pa", Axis.Scale.LOG))
                 .marks("G′", usableStorage.x().values(), usableStorage.y().values())
                 .marks("G″", usableLoss.x().values(), usableLoss.y().values());
         Trail.marksSetAside(figure, curves());
@@ -152,11 +141,11 @@ public final class FrequencySweep implements Measurement {
 
     /** The angular frequencies at which anything usable was measured, in rad/s, rising. */
     public Doubles frequencies() {
-        return Doubles.of(java.util.stream.DoubleStream.concat(
-                        storage.usable().x().values().stream(), loss.usable().x().values().stream())
-                .distinct()
-                .sorted()
-                .toArray());
+        return Doubles.of(
+                DoubleStream.concat(storage.usable().x().values().stream(), loss.usable().x().values().stream())
+                        .distinct()
+                        .sorted()
+                        .toArray());
     }
 
     @Override

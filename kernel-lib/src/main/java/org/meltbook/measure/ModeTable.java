@@ -1,7 +1,6 @@
 package org.meltbook.measure;
 
 import java.util.List;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
 import org.meltbook.figure.Figure;
@@ -72,21 +71,19 @@ public final class ModeTable implements Measurement {
 
     @Override
     public String headline() {
-        return "Table of Maxwell modes" + (conditions.sample().isEmpty() ? "" : " of " + conditions.sample()) + ": "
-                + modes.size() + " modes, " + NumberText.of(modes.x().values().smallest()) + " to "
-                + NumberText.of(modes.x().values().largest()) + " s" + Trail.temperature(conditions)
-                + Trail.setAside(curves()) + ".";
+        return "Table of Maxwell modes" + Trail.of(conditions) + ": " + modes.size() + " modes, "
+                + Trail.range(curves()) + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";
     }
 
     @Override
     public List<Rows> rows() {
-        return List.of(Trail.rows(conditions.sample().isEmpty() ? KIND.name() : conditions.sample(), modes));
+        return List.of(Trail.rows(Trail.title(this), modes));
     }
 
     @Override
     public List<Figure> figures() {
         Curve usable = modes.usable();
-        Figure.Builder figure = Figure.titled("Modes of " + conditions.sample())
+        Figure.Builder figure = Figure.titled("Modes of " + Trail.title(this))
                 .x(Quantity.RELAXATION_TIME)
                 .y(Quantity.RELAXATION_MODULUS)
                 .marks("modes", usable.x().values(), usable.y().values());

@@ -1,8 +1,13 @@
 package org.meltbook.measure;
 
 import java.util.ArrayList;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
+import java.util.stream.Collectors;
 import java.util.stream.IntStream;
+import java.util.stream.Stream;
+import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Rows;
 import org.meltbook.figure.Figure;
@@ -15,6 +20,35 @@ final class Trail {
         return conditions.temperature().isPresent()
                 ? ", at " + NumberText.of(conditions.temperature().getAsDouble() - 273.15) + " °C"
                 : "";
+    }
+
+    /** The sample behind a kind of measurement, as in {@code Flow curve of QB-40}. */
+    static String of(Conditions conditions) {
+        return conditions.sample().isEmpty() ? "" : " of " + conditions.sample();
+    }
+
+    /** What to call a measurement above a table: its sample, or else its kind. */
+    static String title(Measurement measurement) {
+        String sample = measurement.conditions().sample();
+        return sample.isEmpty() ? measurement.kind() : sample;
+    }
+
+    /** From where to where the usable points reach along x, with the unit. */
+    static String range(List<Curve> curves) {
+        double[] usable = curves.stream()
+                .flatMapToDouble(curve -> curve.usable().x().values().stream())
+                .toArray();
+        if (usable.length == 0) {
+            return "none usable";
+        }
+        Doubles all = Doubles.of(usable);
+        return NumberText.of(all.smallest()) + " to " + NumberText.of(all.largest()) + " "
+                + curves.get(0).x().quantity().siUnit();
+    }
+
+    /** The notes with one more. */
+    static List<Note> longer(List<Note> trail, Note note) {
+        return Stream.concat(trail.stream(), Stream.of(note)).toList();
     }
 
     static String setAside(List<Curve> curves) {
@@ -46,15 +80,9 @@ final class Trail {
 
     private static String words(Verdict first, Verdict second) {
         if (first.equals(second) || second.equals(Verdict.SOUND)) {
-            return words(first);
+            return first.text();
         }
-        return first.equals(Verdict.SOUND) ? words(second) : words(first) + "; " + words(second);
-    }
-
-    private static String words(Verdict verdict) {
-        return verdict.equals(Verdict.SOUND)
-                ? ""
-                : verdict.standing().name().toLowerCase(java.util.Locale.ROOT) + ": " + verdict.reason();
+        return first.equals(Verdict.SOUND) ? second.text() : first.text() + "; " + second.text();
     }
 
     static void marksSetAside(Figure.Builder figure, List<Curve> curves) {
@@ -71,17 +99,25 @@ final class Trail {
         }
     }
 
+    /** One caution for all curves with the same verdicts, where there is anything to say. */
     static List<String> cautions(List<Curve> curves) {
+        Map<List<Verdict>, List<Curve>> alike = curves.stream()
+                .collect(Collectors.groupingBy(Curve::verdicts, LinkedHashMap::new, Collectors.toList()));
         List<String> all = new ArrayList<>();
-        for (Curve curve : curves) {
-            long doubtful = curve.verdicts().stream()
-                    .filter(v -> v.standing() == Verdict.Standing.DOUBTFUL)
-                    .count();
-            if (curve.setAside() + doubtful > 0) {
-                all.add(curve.y().quantity().label() + ": " + curve.setAside() + " of " + curve.size()
-                        + " points unusable, " + doubtful + " doubtful; the table gives the reason of each");
+        alike.forEach((verdicts, same) -> {
+            long unusable = count(verdicts, Verdict.Standing.UNUSABLE);
+            long doubtful = count(verdicts, Verdict.Standing.DOUBTFUL);
+            if (unusable + doubtful > 0) {
+                String labels =
+                        same.stream().map(curve -> curve.y().quantity().label()).collect(Collectors.joining(" and "));
+                all.add(labels + ": " + unusable + " of " + verdicts.size() + " points unusable, " + doubtful
+                        + " doubtful; the table gives the reason of each");
             }
-        }
+        });
         return List.copyOf(all);
+    }
+
+    private static long count(List<Verdict> verdicts, Verdict.Standing standing) {
+        return verdicts.stream().filter(v -> v.standing() == standing).count();
     }
 }

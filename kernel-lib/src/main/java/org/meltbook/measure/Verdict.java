@@ -1,5 +1,7 @@
 package org.meltbook.measure;
 
+import java.util.Locale;
+
 /**
  * What a row is worth, and why.
  *
@@ -14,7 +16,12 @@ public record Verdict(Standing standing, String reason) {
         /** Used, but something speaks against it. */
         DOUBTFUL,
         /** Kept and shown, never used in a fit. */
-        UNUSABLE
+        UNUSABLE;
+
+        /** The standing as it is written in tables: {@code doubtful}. */
+        public String word() {
+            return name().toLowerCase(Locale.ROOT);
+        }
     }
 
     /** A row against which nothing is known. */
@@ -28,6 +35,11 @@ public record Verdict(Standing standing, String reason) {
     /** A row that no fit uses. */
     public static Verdict unusable(String reason) {
         return new Verdict(Standing.UNUSABLE, reason);
+    }
+
+    /** The verdict as it stands in a table: {@code doubtful: …} with the reason; empty for a sound row. */
+    public String text() {
+        return equals(SOUND) ? "" : standing.word() + ": " + reason;
     }
 
     /** Whether a fit may use the row. */

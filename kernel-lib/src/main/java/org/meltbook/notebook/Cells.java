@@ -51,7 +51,11 @@ public final class Cells {
         return Tables.of(rows);
     }
 
-    /** Every number of a measurement as a Tablesaw table: a view, of which changes do not come back. */
+    /**
+     * Every number of a measurement as a Tablesaw table: a view, of which changes do not come back.
+     *
+     * @throws RangeException if its curves do not fit into one table; {@code tables(x)} gives theirs
+     */
     public static Table table(Measurement measurement) {
         return Tables.of(measurement);
     }

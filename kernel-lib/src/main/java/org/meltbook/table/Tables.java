@@ -15,6 +15,7 @@ import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
 import org.meltbook.measure.FrequencySweep;
 import org.meltbook.measure.Measurement;
+import org.meltbook.measure.Verdict;
 import org.meltbook.measure.Vocabulary;
 import tech.tablesaw.api.DoubleColumn;
 import tech.tablesaw.api.StringColumn;
@@ -68,8 +69,10 @@ public final class Tables {
             return stacked(sweep);
         }
         throw new RangeException(
-                measurement.kind() + " of '" + measurement.conditions().sample() + "' makes " + parts.size()
-                        + " tables, which do not fit into one: use Tables.each");
+                measurement.kind() + " of '" + measurement.conditions().sample() + "' makes "
+                        + parts.size() + " tables, because not all of its curves share their "
+                        + measurement.curves().get(0).x().quantity().label()
+                        + " values: Tables.each(…), or tables(…) in a cell, gives them one by one");
     }
 
     /** One column of verdicts if all curves have the same, else one for each curve; none if there is nothing to say. */
@@ -83,7 +86,7 @@ public final class Tables {
             String heading =
                     same ? VerdictText.HEADING : VerdictText.heading(curve.y().quantity());
             table.addColumns(
-                    StringColumn.create(heading, curve.verdicts().stream().map(VerdictText::of)));
+                    StringColumn.create(heading, curve.verdicts().stream().map(Verdict::text)));
         }
         return table;
     }
@@ -101,7 +104,7 @@ public final class Tables {
                         loss.verdicts().stream().map(v -> "loss"))
                 .toList();
         List<String> verdicts = Stream.concat(storage.verdicts().stream(), loss.verdicts().stream())
-                .map(VerdictText::of)
+                .map(Verdict::text)
                 .toList();
         Table table = Table.create(
                 sweep.conditions().sample(),

@@ -123,6 +123,54 @@ class MeasurementContractTest {
                         figure.toString()));
     }
 
+    /** Of the six x values −1, 0, NaN, 0.1, 1, 10 the last three are usable. */
+    @ParameterizedTest
+    @MethodSource("measurements")
+    void the_headline_gives_the_range_that_can_be_used(Measurement measurement) {
+        String from = measurement.curves().stream().anyMatch(curve -> curve.size() == 3)
+                ? "0.1000 to 20.00 "
+                : "0.1000 to 10.00 ";
+        assertTrue(measurement.headline().contains(from), measurement.headline());
+    }
+
+    @Test
+    void a_measurement_without_a_usable_row_says_so_in_place_of_a_range() {
+        FlowCurve none = columns(Doubles.of(-1, Double.NaN), Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS)
+                .flowCurve();
+        assertTrue(none.headline().contains("2 points, none usable"), none.headline());
+    }
+
+    @Test
+    void curves_with_the_same_verdicts_share_one_caution_and_others_keep_theirs() {
+        FlowCurve alike = readings(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS).flowCurve();
+        assertEquals(
+                List.of("shear stress and viscosity: 3 of 6 points unusable, 0 doubtful;"
+                        + " the table gives the reason of each"),
+                alike.cautions());
+        Series rate = Series.of(Quantity.SHEAR_RATE, 1, 2);
+        FlowCurve apart = FlowCurve.of(
+                CONDITIONS,
+                Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, 3, 4)),
+                new Curve(
+                        rate,
+                        Series.of(Quantity.VISCOSITY, 3, 2),
+                        List.of(Verdict.SOUND, Verdict.doubtful("not yet steady"))),
+                java.util.Optional.empty(),
+                List.of());
+        assertEquals(1, apart.cautions().size());
+        assertTrue(apart.cautions().get(0).startsWith("viscosity: 0 of 2 points unusable, 1 doubtful"));
+    }
+
+    @Test
+    void a_measurement_of_no_named_sample_is_titled_by_its_kind() {
+        ModeTable modes = Readings.of("test", Conditions.of("", "made in the test"))
+                .with(Quantity.RELAXATION_TIME, LabUnit.parse("s"), Doubles.of(1, 2))
+                .with(Quantity.RELAXATION_MODULUS, LabUnit.parse("Pa"), Doubles.of(3, 4))
+                .modeTable();
+        assertEquals("Modes of table of Maxwell modes", modes.figures().get(0).title());
+        assertEquals("table of Maxwell modes", modes.rows().get(0).title());
+    }
+
     @Test
     void one_more_note_makes_a_new_measurement() {
         FlowCurve curve = readings(Quantity.SHEAR_RATE, Quantity.SHEAR_STRESS).flowCurve();

@@ -146,7 +146,12 @@ class TablesTest {
         Curve normal =
                 Curve.of(Series.of(Quantity.SHEAR_RATE, 5), Series.of(Quantity.FIRST_NORMAL_STRESS_DIFFERENCE, 6));
         FlowCurve curve = FlowCurve.of(CONDITIONS, plain.stress(), plain.viscosity(), Optional.of(normal), List.of());
-        assertThrows(RangeException.class, () -> Tables.of(curve));
+        String message =
+                assertThrows(RangeException.class, () -> Tables.of(curve)).getMessage();
+        assertEquals(
+                "flow curve of 'QB-40 (invented)' makes 2 tables, because not all of its curves share their shear rate"
+                        + " values: Tables.each(…), or tables(…) in a cell, gives them one by one",
+                message);
         assertEquals(2, Tables.each(curve).size());
     }
 
