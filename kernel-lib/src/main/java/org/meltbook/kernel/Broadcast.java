@@ -18,7 +18,8 @@ final class Broadcast {
     private final ZMQ.Socket socket;
     private final Deque<Item> waiting = new ArrayDeque<>();
     private final Thread thread = new Thread(this::sendAll, "meltbook-iopub");
-    private boolean sending;
+    private long given;
+    private long sent;
     private boolean closed;
 
     Broadcast(Wire wire, ZMQ.Socket socket) {
@@ -48,12 +49,13 @@ final class Broadcast {
         }
     }
 
-    /** Returns when all that was given has been sent. */
+    /** Returns when all that was given before has been sent; what others go on giving is not waited for. */
     synchronized void flush() {
         waiting.forEach(item -> item.due = System.nanoTime());
         notifyAll();
         boolean interrupted = false;
-        while (!closed && (sending || !waiting.isEmpty())) {
+        long last = given;
+        while (!closed && sent < last) {
             interrupted |= !pause(0);
         }
         restore(interrupted);
@@ -75,6 +77,7 @@ final class Broadcast {
             waiting.peekLast().due = System.nanoTime();
         }
         waiting.add(item);
+        given++;
         notifyAll();
         restore(interrupted);
     }
@@ -104,7 +107,6 @@ final class Broadcast {
         while (!closed) {
             long now = System.nanoTime();
             if (!waiting.isEmpty() && waiting.peekFirst().due - now <= 0) {
-                sending = true;
                 return waiting.removeFirst();
             }
             pause(waiting.isEmpty() ? 0 : 1 + (waiting.peekFirst().due - now) / 1_000_000);
@@ -113,7 +115,7 @@ final class Broadcast {
     }
 
     private synchronized void sent() {
-        sending = false;
+        sent++;
         notifyAll();
     }
 

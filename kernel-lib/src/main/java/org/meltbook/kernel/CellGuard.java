@@ -34,12 +34,12 @@ public final class CellGuard {
         throw new ExitRefused();
     }
 
-    static void stop(Thread cellThread) {
+    static synchronized void stop(Thread cellThread) {
         STOPPED.add(cellThread);
         anyStopped = true;
     }
 
-    static void release(Thread cellThread) {
+    static synchronized void release(Thread cellThread) {
         STOPPED.remove(cellThread);
         anyStopped = !STOPPED.isEmpty();
     }

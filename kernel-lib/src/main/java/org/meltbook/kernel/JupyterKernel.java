@@ -147,7 +147,8 @@ public final class JupyterKernel {
             reply.ifPresent(content -> send(socket, request, content));
         } catch (ZMQException e) {
             throw e;
-        } catch (RuntimeException e) {
+        } catch (RuntimeException | StackOverflowError e) {
+            // The compiler overflows on code nested too deeply, also when asked for completions: that ends no channel.
             String kind = e.getClass().getSimpleName();
             send(socket, request, Execution.error(kind, String.valueOf(e.getMessage()), List.of()));
         } finally {

@@ -240,6 +240,24 @@ class JupyterKernelTest {
     }
 
     @Test
+    void answers_while_a_thread_of_an_earlier_cell_prints_without_end() {
+        Exchange started = client.execute("var noise = new Thread(() -> {\n"
+                + "    while (!Thread.currentThread().isInterrupted()) System.out.println(\"noise\");\n"
+                + "});\nnoise.setDaemon(true);\nnoise.start();");
+        assertEquals("ok", started.status());
+        assertEquals("42", client.execute("42").resultText());
+        assertEquals("ok", client.execute("noise.interrupt();\nnoise.join();").status());
+    }
+
+    @Test
+    void lives_on_after_it_was_asked_to_complete_what_is_nested_too_deeply() {
+        String nested = "(".repeat(20_000) + "1" + ")".repeat(20_000) + ".";
+        client.collect(client.send("complete_request", Map.of("code", nested, "cursor_pos", nested.length())));
+        client.collect(client.send("is_complete_request", Map.of("code", nested)));
+        assertEquals("42", client.execute("42").resultText());
+    }
+
+    @Test
     void stops_a_question_on_interrupt() {
         String id = client.send("execute_request", Map.of("code", "System.in.read()", "allow_stdin", true));
         client.question();
