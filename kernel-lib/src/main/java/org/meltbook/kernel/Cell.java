@@ -1,6 +1,8 @@
 package org.meltbook.kernel;
 
+import java.io.PrintStream;
 import java.util.concurrent.atomic.AtomicReference;
+import java.util.function.BiConsumer;
 import org.dflib.jjava.jupyter.kernel.display.Renderer;
 
 /**
@@ -14,12 +16,7 @@ public final class Cell {
 
     /** Shows {@code value} as if it were a result; outside a session its text goes to standard output. */
     public static void display(Object value) {
-        Stage stage = STAGE.get();
-        if (stage == null) {
-            System.out.println(value);
-        } else {
-            stage.outlet.display(Rendering.of(value, stage.renderer));
-        }
+        put(value, "", Outlet::display);
     }
 
     /**
@@ -27,22 +24,12 @@ public final class Cell {
      * standard output.
      */
     public static void display(Object value, String id) {
-        Stage stage = STAGE.get();
-        if (stage == null) {
-            System.out.println(value);
-        } else {
-            stage.outlet.display(named(value, id, stage));
-        }
+        put(value, id, Outlet::display);
     }
 
     /** Replaces what was shown under a name; outside a session the text goes to standard output. */
     public static void update(Object value, String id) {
-        Stage stage = STAGE.get();
-        if (stage == null) {
-            System.out.println(value);
-        } else {
-            stage.outlet.update(named(value, id, stage));
-        }
+        put(value, id, Outlet::update);
     }
 
     /** Clears what the cell has shown, when the next thing comes; outside a session nothing happens. */
@@ -63,9 +50,16 @@ public final class Cell {
         STAGE.compareAndSet(stage, null);
     }
 
-    private static MimeBundle named(Object value, String id, Stage stage) {
+    private static void put(Object value, String id, BiConsumer<Outlet, MimeBundle> how) {
+        Stage stage = STAGE.get();
+        if (stage == null) {
+            // Who calls this without a session sits at a console, as in the jshell tool.
+            PrintStream console = System.out;
+            console.println(value);
+            return;
+        }
         MimeBundle bundle = Rendering.of(value, stage.renderer);
-        return new MimeBundle(bundle.data(), bundle.metadata(), id);
+        how.accept(stage.outlet, id.isEmpty() ? bundle : new MimeBundle(bundle.data(), bundle.metadata(), id));
     }
 
     /** Where the running cell shows its values. */
