@@ -138,7 +138,8 @@ final class CellStreams implements AutoCloseable {
             try {
                 line = ByteBuffer.wrap((asked.ask("", false) + "\n").getBytes(StandardCharsets.UTF_8));
             } catch (UncheckedIOException e) {
-                throw e.getCause();
+                // Unchecked: a Scanner takes an IOException for the end of the input and hides why there is none.
+                throw new UncheckedIOException(e.getCause().getMessage(), e.getCause());
             }
         }
     }

@@ -11,7 +11,7 @@ import org.meltbook.kernel.Outlet;
 
 /** Keeps what a cell puts out, in the order in which it comes. Text without end is cut, and says so. */
 final class Recorder implements Outlet {
-    /** Longest printed text that is kept of one cell, in characters. */
+    /** Longest printed text that is kept of one cell at a time, in characters. */
     static final int LONGEST = 1_000_000;
 
     private final List<Output> outputs = new ArrayList<>();
@@ -49,12 +49,14 @@ final class Recorder implements Outlet {
         if (!wait) {
             outputs.clear();
             displayIds.clear();
+            printed = 0;
         }
     }
 
     @Override
     public String ask(String prompt, boolean secret) {
-        throw new UncheckedIOException(new IOException("nobody can be asked in a headless run: " + prompt));
+        String question = prompt.isBlank() ? "" : ": " + prompt;
+        throw new UncheckedIOException(new IOException("nobody can be asked in a headless run" + question));
     }
 
     /** Adds how the cell ended, and gives all that it has put out. */
@@ -68,6 +70,7 @@ final class Recorder implements Outlet {
     }
 
     private void print(String name, String text) {
+        clearIfAsked();
         int room = LONGEST - printed;
         printed += text.length();
         if (text.length() <= room) {
@@ -80,10 +83,14 @@ final class Recorder implements Outlet {
         }
     }
 
-    private void add(Output output, String displayId) {
+    private void clearIfAsked() {
         if (clearNext) {
             clear(false);
         }
+    }
+
+    private void add(Output output, String displayId) {
+        clearIfAsked();
         outputs.add(output);
         displayIds.add(displayId);
     }

@@ -158,10 +158,12 @@ class JShellEvaluatorTest {
 
     @Test
     void says_that_nobody_can_be_asked() {
-        Outcome outcome = evaluator.run("System.in.read()", new Collected());
-        Outcome.Failed failed = assertInstanceOf(Outcome.Failed.class, outcome);
-        assertEquals("IOException", failed.kind());
-        assertEquals("nobody is here", failed.message());
+        for (String asking : List.of("System.in.read()", "new Scanner(System.in, \"UTF-8\").nextLine()")) {
+            Outcome outcome = evaluator.run(asking, new Collected());
+            Outcome.Failed failed = assertInstanceOf(Outcome.Failed.class, outcome);
+            assertEquals("UncheckedIOException", failed.kind());
+            assertEquals("nobody is here", failed.message());
+        }
     }
 
     @Test
