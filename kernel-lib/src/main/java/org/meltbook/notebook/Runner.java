@@ -4,6 +4,7 @@ import java.io.IOException;
 import java.io.PrintStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.time.Duration;
 import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
@@ -23,6 +24,7 @@ import org.meltbook.report.IndexPage;
  */
 public final class Runner {
     private static final String SUFFIX = ".ipynb";
+    private static final Duration GRACE = Duration.ofSeconds(10);
 
     private final Supplier<Evaluator> sessions;
     private final PrintStream progress;
@@ -130,7 +132,7 @@ public final class Runner {
         long cells = stored.cells().stream().filter(Notebook.Cell::isRunnable).count();
         List<Notebook.Cell> run = new ArrayList<>();
         DataFolder.Place before = DataFolder.enter(file.toAbsolutePath().getParent());
-        try (Session session = new Session(sessions.get())) {
+        try (Session session = new Session(sessions.get(), GRACE)) {
             running = Optional.of(session);
             int count = 0;
             for (Notebook.Cell cell : Tidy.of(stored).cells()) {

@@ -14,14 +14,18 @@ import org.meltbook.kernel.Outlet;
 
 /** An evaluator with a clock beside it: a cell that takes too long is interrupted, and left behind if it goes on. */
 final class Session implements AutoCloseable {
-    private static final Duration GRACE = Duration.ofSeconds(10);
-
     private final Evaluator evaluator;
+    private final Duration grace;
     private final ExecutorService thread;
-    private boolean lost;
 
-    Session(Evaluator evaluator) {
+    /**
+     * A session.
+     *
+     * @param grace how long a cell that was interrupted has to react before it is left behind
+     */
+    Session(Evaluator evaluator, Duration grace) {
         this.evaluator = evaluator;
+        this.grace = grace;
         this.thread = Executors.newSingleThreadExecutor(work -> {
             Thread cells = new Thread(work, "cells");
             cells.setDaemon(true);
@@ -52,11 +56,10 @@ final class Session implements AutoCloseable {
     private Outcome tooLong(Future<Outcome> running, Duration limit) {
         String message = "took longer than " + limit.toMillis() / 1000.0 + " s and was stopped";
         try {
-            Outcome outcome = running.get(GRACE.toMillis(), TimeUnit.MILLISECONDS);
+            Outcome outcome = running.get(grace.toMillis(), TimeUnit.MILLISECONDS);
             int line = outcome instanceof Outcome.Failed stopped ? stopped.line() : 0;
             return failed("TimeLimit", message, line);
         } catch (TimeoutException e) {
-            lost = true;
             return failed("TimeLimit", message + "; it did not react and was left behind", 0);
         } catch (InterruptedException e) {
             Thread.currentThread().interrupt();
@@ -70,11 +73,10 @@ final class Session implements AutoCloseable {
         return new Outcome.Failed(Outcome.Reason.INTERRUPTED, kind, message, line, List.of(kind + ": " + message));
     }
 
+    /** Ends the session, also under a cell that was left behind: streams and exit of the process become free again. */
     @Override
     public void close() {
         thread.shutdown();
-        if (!lost) {
-            evaluator.close();
-        }
+        evaluator.close();
     }
 }

@@ -11,6 +11,7 @@ import java.util.List;
 import java.util.Optional;
 import java.util.Set;
 import java.util.regex.Pattern;
+import java.util.stream.Collectors;
 import java.util.stream.Stream;
 import org.meltbook.kernel.MimeBundle;
 
@@ -123,7 +124,7 @@ public final class Tidy {
                         pieces.stream()
                                 .filter(piece -> piece.name().equals(name))
                                 .map(Output.Stream::text)
-                                .reduce("", String::concat)))
+                                .collect(Collectors.joining())))
                 .filter(stream -> !stream.text().isEmpty())
                 .toList();
     }
