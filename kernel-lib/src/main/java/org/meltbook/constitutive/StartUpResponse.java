@@ -2,7 +2,6 @@ package org.meltbook.constitutive;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.function.ToDoubleFunction;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
@@ -40,25 +39,6 @@ public record StartUpResponse(ConstitutiveModel model, double rate, Doubles time
             stresses.add(model.stress(flow, Require.notNegative("time", times.at(i), "s")));
         }
         return new StartUpResponse(model, rate, times, stresses);
-    }
-
-    private Doubles each(ToDoubleFunction<Stress> part) {
-        return Doubles.of(stresses.stream().mapToDouble(part).toArray());
-    }
-
-    @Override
-    public Doubles shearStress() {
-        return each(Stress::shear);
-    }
-
-    @Override
-    public Doubles firstNormalStressDifference() {
-        return each(Stress::firstNormalDifference);
-    }
-
-    @Override
-    public Doubles secondNormalStressDifference() {
-        return each(Stress::secondNormalDifference);
     }
 
     /** Shear stress growth coefficient η⁺(t) = σ/γ̇ in Pa·s. */
@@ -112,11 +92,6 @@ public record StartUpResponse(ConstitutiveModel model, double rate, Doubles time
                         .y(Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
                         .line(model.name(), times, firstNormalStressDifference())
                         .build());
-    }
-
-    @Override
-    public List<String> cautions() {
-        return model.limits();
     }
 
     @Override

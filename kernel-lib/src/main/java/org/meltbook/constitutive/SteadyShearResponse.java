@@ -2,7 +2,6 @@ package org.meltbook.constitutive;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.function.ToDoubleFunction;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
@@ -39,31 +38,12 @@ public record SteadyShearResponse(ConstitutiveModel model, Doubles rates, List<S
         return new SteadyShearResponse(model, rates, stresses);
     }
 
-    private Doubles each(ToDoubleFunction<Stress> part) {
-        return Doubles.of(stresses.stream().mapToDouble(part).toArray());
-    }
-
     private Doubles over(Doubles numbers, int power) {
         double[] divided = numbers.toArray();
         for (int i = 0; i < divided.length; i++) {
             divided[i] /= Math.pow(rates.at(i), power);
         }
         return Doubles.of(divided);
-    }
-
-    @Override
-    public Doubles shearStress() {
-        return each(Stress::shear);
-    }
-
-    @Override
-    public Doubles firstNormalStressDifference() {
-        return each(Stress::firstNormalDifference);
-    }
-
-    @Override
-    public Doubles secondNormalStressDifference() {
-        return each(Stress::secondNormalDifference);
     }
 
     /** Viscosity η = σ/γ̇ in Pa·s. */
@@ -124,11 +104,6 @@ public record SteadyShearResponse(ConstitutiveModel model, Doubles rates, List<S
                         .y(Quantity.FIRST_NORMAL_STRESS_DIFFERENCE)
                         .line(model.name(), rates, firstNormalStressDifference())
                         .build());
-    }
-
-    @Override
-    public List<String> cautions() {
-        return model.limits();
     }
 
     @Override

@@ -2,6 +2,7 @@ package org.meltbook.constitutive;
 
 import java.util.Arrays;
 import org.meltbook.base.Doubles;
+import org.meltbook.base.RangeException;
 import org.meltbook.flow.Component;
 
 /**
@@ -12,6 +13,13 @@ import org.meltbook.flow.Component;
 public record Stress(Doubles components) {
     /** No stress. */
     public static final Stress NONE = new Stress(Doubles.of(new double[Component.values().length]));
+
+    /** Checks that there are six. */
+    public Stress {
+        if (components.size() != Component.values().length) {
+            throw new RangeException("a stress has six components, found " + components.size());
+        }
+    }
 
     /** The stress of simple shear. */
     static Stress shear(double xx, double yy, double zz, double xy) {

@@ -207,4 +207,10 @@ class UpperConvectedMaxwellTest {
             return Doubles.of(0);
         }
     }
+
+    @Test
+    void a_stress_has_six_components() {
+        assertThrows(RangeException.class, () -> new Stress(Doubles.of(1, 2, 3)));
+        assertEquals(0, Stress.NONE.shear(), 0);
+    }
 }
