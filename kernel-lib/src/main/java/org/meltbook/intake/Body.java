@@ -34,6 +34,7 @@ final class Body {
     private final Map<Group, Integer> groups = new HashMap<>();
     private final List<Group> order = new ArrayList<>();
     private int[] groupOfRow = new int[64];
+    private int[][] rowsByGroup = {};
     private int rows;
     private List<String> lastCells = List.of();
     private int lastGroup = -1;
@@ -123,17 +124,26 @@ final class Body {
         return List.copyOf(order);
     }
 
-    /** The rows of a group, counted from zero. */
+    /** The rows of a group, counted from zero; asked when all rows are there. */
     int[] rowsOf(Group group) {
-        int index = groups.get(group);
-        int[] found = new int[rows];
-        int count = 0;
-        for (int row = 0; row < rows; row++) {
-            if (groupOfRow[row] == index) {
-                found[count++] = row;
-            }
+        if (rowsByGroup.length != order.size()) {
+            rowsByGroup = rowsByGroup();
         }
-        return Arrays.copyOf(found, count);
+        return rowsByGroup[groups.get(group)].clone();
+    }
+
+    private int[][] rowsByGroup() {
+        int[] counts = new int[order.size()];
+        for (int row = 0; row < rows; row++) {
+            counts[groupOfRow[row]]++;
+        }
+        int[][] found = new int[order.size()][];
+        Arrays.setAll(found, group -> new int[counts[group]]);
+        for (int row = rows - 1; row >= 0; row--) {
+            int group = groupOfRow[row];
+            found[group][--counts[group]] = row;
+        }
+        return found;
     }
 
     /** The numbers of a column at the given rows, as they were written. */

@@ -68,11 +68,26 @@ final class LayoutFinder {
                     ? Optional.of(
                             unit(heading, unitRow && headings.get(i).unitText().isEmpty()))
                     : Optional.empty();
-            String why = heading.quantity().isPresent() ? "not needed" : "heading not known";
-            uses.add(new Use(i, heading, roles.get(i), unit, roles.get(i) == Role.PASSED_OVER ? why : ""));
+            String why = roles.get(i) == Role.PASSED_OVER ? whyPassedOver(heading) : "";
+            uses.add(new Use(i, heading, roles.get(i), unit, why));
         }
         long unitLine = unitRow ? next.orElseThrow().getStartingLineNumber() : 0;
         return new Layout(uses, unitLine, Math.max(unitLine, header.getStartingLineNumber()));
+    }
+
+    private static String whyPassedOver(Heading heading) {
+        if (namesSample(heading)) {
+            return "the file is split by another column";
+        }
+        return heading.quantity()
+                .map(quantity -> "no measurement is made from " + quantity.label())
+                .orElse("heading not known");
+    }
+
+    /** Whether the cells of the column tell one sample from another, unless the caller says which column does. */
+    private static boolean namesSample(Heading heading) {
+        return SAMPLES.stream().anyMatch(heading::isNamed)
+                || heading.quantity().filter(COMPOSITION::contains).isPresent();
     }
 
     private List<Heading> headings() {
@@ -152,9 +167,7 @@ final class LayoutFinder {
     }
 
     private Role wideRole(Heading heading) {
-        boolean named = SAMPLES.stream().anyMatch(heading::isNamed);
-        boolean composed = heading.quantity().filter(COMPOSITION::contains).isPresent();
-        if (options.keys().isEmpty() && (named || composed)) {
+        if (options.keys().isEmpty() && namesSample(heading)) {
             return Role.KEY;
         }
         return heading.quantity().filter(READ::contains).isPresent() ? Role.NUMBERS : Role.PASSED_OVER;

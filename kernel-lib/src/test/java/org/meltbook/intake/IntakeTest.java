@@ -4,6 +4,7 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertNotEquals;
 import static org.junit.jupiter.api.Assertions.assertThrows;
+import static org.junit.jupiter.api.Assertions.assertTimeout;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import java.io.IOException;
@@ -12,6 +13,7 @@ import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.security.MessageDigest;
+import java.time.Duration;
 import java.util.HexFormat;
 import java.util.List;
 import org.junit.jupiter.api.Test;
@@ -185,6 +187,33 @@ class IntakeTest {
         Files.writeString(file, "gap,shear rate [1/s],viscosity [Pa·s]\n0.5,1,11\n");
         IntakeException changed = assertThrows(IntakeException.class, () -> whole.splitBy("gap"));
         assertTrue(changed.getMessage().contains("a changed one"), changed.getMessage());
+    }
+
+    @Test
+    void a_column_that_is_passed_over_says_why() {
+        Path file = file(
+                "sample,gap,density [g/cm3],t [s],shear rate [1/s],viscosity [Pa·s]",
+                "A,0.5,0.95,1,1,10",
+                "A,1.0,0.95,2,1,20");
+        assertEquals(
+                List.of(
+                        "column 'sample' is passed over: the file is split by another column",
+                        "column 'density [g/cm3]' is passed over: no measurement is made from density",
+                        "column 't [s]' is passed over: no measurement is made from time"),
+                Exports.read(file).splitBy("gap").cautions());
+    }
+
+    /** Every row of a file with many measurements is looked at a fixed number of times: the limit catches a square. */
+    @Test
+    void a_file_of_as_many_measurements_as_rows_is_read_in_time() {
+        String[] lines = new String[40_001];
+        lines[0] = "lot,shear rate [1/s],viscosity [Pa·s]";
+        for (int i = 1; i < lines.length; i++) {
+            lines[i] = "lot " + i + ",1,10";
+        }
+        assertTimeout(
+                Duration.ofSeconds(20),
+                () -> assertEquals(40_000, read(lines).flowCurves().size()));
     }
 
     @Test
