@@ -28,6 +28,11 @@ public record Conditions(
         return new Conditions(sample, OptionalDouble.empty(), source, "", Map.of());
     }
 
+    /** The sample behind a noun, as in {@code Flow curve of A-00}: with the "of", or nothing if it has no name. */
+    public String ofSample() {
+        return sample.isEmpty() ? "" : " of " + sample;
+    }
+
     /** The same at a temperature in K. */
     public Conditions at(double kelvin) {
         return new Conditions(sample, OptionalDouble.of(kelvin), source, digest, remarks);

@@ -7,6 +7,7 @@ import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
 import org.meltbook.figure.Figure;
 import org.meltbook.units.Quantity;
+import org.meltbook.units.Require;
 
 /**
  * Steady shear: shear stress and viscosity over shear rate, with the first normal stress difference where it was
@@ -59,13 +60,24 @@ public final class FlowCurve implements Measurement {
         return new FlowCurve(conditions, stress, viscosity, firstNormalStress, trail);
     }
 
-    /** A flow curve of sound points from shear rates in 1/s and shear stresses in Pa. */
+    /**
+     * A flow curve of sound points.
+     *
+     * @param rates    shear rates in 1/s, above zero
+     * @param stresses shear stresses in Pa, above zero, as many
+     * @throws RangeException if there are not as many of both, or one is not above zero
+     */
     public static FlowCurve ofStress(Conditions conditions, double[] rates, double[] stresses) {
+        if (rates.length != stresses.length) {
+            throw new RangeException("a flow curve needs as many shear rates as shear stresses, found " + rates.length
+                    + " and " + stresses.length);
+        }
         Series rate = Series.of(Quantity.SHEAR_RATE, rates);
         Series stress = Series.of(Quantity.SHEAR_STRESS, stresses);
         double[] viscosities = new double[rates.length];
         for (int i = 0; i < rates.length; i++) {
-            viscosities[i] = stresses[i] / rates[i];
+            viscosities[i] = Require.positive("shear stress", stresses[i], "Pa")
+                    / Require.positive("shear rate", rates[i], "1/s");
         }
         Series viscosity = Series.of(Quantity.VISCOSITY, viscosities);
         return of(conditions, Curve.of(rate, stress), Curve.of(rate, viscosity), Optional.empty(), List.of());
@@ -123,7 +135,7 @@ public final class FlowCurve implements Measurement {
 
     @Override
     public String headline() {
-        return "Flow curve" + Trail.of(conditions) + ": " + viscosity.size() + " points, "
+        return "Flow curve" + conditions.ofSample() + ": " + viscosity.size() + " points, "
                 + Trail.range(List.of(viscosity))
                 + (firstNormalStress.isPresent() ? ", with first normal stress difference" : "")
                 + Trail.temperature(conditions) + Trail.setAside(List.of(viscosity)) + ".";

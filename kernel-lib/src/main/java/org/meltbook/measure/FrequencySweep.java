@@ -98,7 +98,7 @@ public final class FrequencySweep implements Measurement {
 
     @Override
     public String headline() {
-        return "Frequency sweep" + Trail.of(conditions) + ": " + storage.size() + " storage and " + loss.size()
+        return "Frequency sweep" + conditions.ofSample() + ": " + storage.size() + " storage and " + loss.size()
                 + " loss moduli, "
                 + (sharesFrequencies() ? "at common frequencies" : "at frequencies of their own") + ", "
                 + Trail.range(curves()) + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";

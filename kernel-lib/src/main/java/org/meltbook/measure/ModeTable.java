@@ -71,7 +71,7 @@ public final class ModeTable implements Measurement {
 
     @Override
     public String headline() {
-        return "Table of Maxwell modes" + Trail.of(conditions) + ": " + modes.size() + " modes, "
+        return "Table of Maxwell modes" + conditions.ofSample() + ": " + modes.size() + " modes, "
                 + Trail.range(curves()) + Trail.temperature(conditions) + Trail.setAside(curves()) + ".";
     }
 

@@ -22,11 +22,6 @@ final class Trail {
                 : "";
     }
 
-    /** The sample behind a kind of measurement, as in {@code Flow curve of QB-40}. */
-    static String of(Conditions conditions) {
-        return conditions.sample().isEmpty() ? "" : " of " + conditions.sample();
-    }
-
     /** What to call a measurement above a table: its sample, or else its kind. */
     static String title(Measurement measurement) {
         String sample = measurement.conditions().sample();

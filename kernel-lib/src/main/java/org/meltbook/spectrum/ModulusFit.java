@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Random;
+import java.util.function.DoubleUnaryOperator;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
@@ -52,26 +53,24 @@ final class ModulusFit {
         return new ModulusFit(times, lossRows(loss, times).toArray(new double[0][]), 0, progress);
     }
 
-    private static List<double[]> storageRows(Curve curve, Doubles times) {
+    /** One row a point: what a mode of unit modulus at each time adds to model / measured. */
+    private static List<double[]> rows(Curve curve, Doubles times, DoubleUnaryOperator share) {
         List<double[]> rows = new ArrayList<>();
         for (int i = 0; i < curve.size(); i++) {
             double frequency = curve.x().at(i);
             double measured = curve.y().at(i);
-            rows.add(times.map(time -> RelaxationSpectrum.storageShare(frequency * time) / measured)
+            rows.add(times.map(time -> share.applyAsDouble(frequency * time) / measured)
                     .toArray());
         }
         return rows;
     }
 
+    private static List<double[]> storageRows(Curve curve, Doubles times) {
+        return rows(curve, times, RelaxationSpectrum::storageShare);
+    }
+
     private static List<double[]> lossRows(Curve curve, Doubles times) {
-        List<double[]> rows = new ArrayList<>();
-        for (int i = 0; i < curve.size(); i++) {
-            double frequency = curve.x().at(i);
-            double measured = curve.y().at(i);
-            rows.add(times.map(time -> RelaxationSpectrum.lossShare(frequency * time) / measured)
-                    .toArray());
-        }
-        return rows;
+        return rows(curve, times, RelaxationSpectrum::lossShare);
     }
 
     private double[] solve(double[] target, Progress progress) {

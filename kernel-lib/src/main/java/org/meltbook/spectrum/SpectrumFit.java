@@ -135,7 +135,7 @@ public final class SpectrumFit implements Exhibit {
 
     @Override
     public String headline() {
-        return "Relaxation spectrum" + of(sweep.conditions().sample()) + ": " + modeCount() + " within "
+        return "Relaxation spectrum" + sweep.conditions().ofSample() + ": " + modeCount() + " within "
                 + NumberText.of(100 * rootMeanSquare(), 2) + " % (root mean square); "
                 + limits.zone().verdict() + "; η₀ " + viscosityWords() + ".";
     }
@@ -153,10 +153,6 @@ public final class SpectrumFit implements Exhibit {
         }
         return "= " + NumberText.of(viscosity.value()) + " Pa·s (95 %: " + NumberText.of(viscosity.low()) + " to "
                 + NumberText.of(viscosity.high()) + ")";
-    }
-
-    private static String of(String sample) {
-        return sample.isEmpty() ? "" : " of " + sample;
     }
 
     @Override
@@ -202,7 +198,7 @@ public final class SpectrumFit implements Exhibit {
         Doubles losses = moduli.loss().x().values();
         Doubles storageLine = RelaxationSpectrum.spread(storages.smallest(), storages.largest());
         Doubles lossLine = RelaxationSpectrum.spread(losses.smallest(), losses.largest());
-        return Figure.titled("Moduli" + of(sweep.conditions().sample()) + ", measured and from the spectrum")
+        return Figure.titled("Moduli" + sweep.conditions().ofSample() + ", measured and from the spectrum")
                 .x(Quantity.ANGULAR_FREQUENCY)
                 .y(new Axis("moduli G′, G″", "Pa", Axis.Scale.LOG))
                 .line("G′ of the spectrum", storageLine, storageLine.map(spectrum()::storage))
@@ -215,7 +211,7 @@ public final class SpectrumFit implements Exhibit {
 
     private Figure residualFigure() {
         Doubles ends = Doubles.of(moduli.lowest(), moduli.highest());
-        return Figure.titled("Misfit of the spectrum" + of(sweep.conditions().sample()))
+        return Figure.titled("Misfit of the spectrum" + sweep.conditions().ofSample())
                 .x(Quantity.ANGULAR_FREQUENCY)
                 .y(new Axis("fitted / measured − 1", "%", Axis.Scale.LINEAR))
                 .line("no misfit", ends, Doubles.of(0, 0))

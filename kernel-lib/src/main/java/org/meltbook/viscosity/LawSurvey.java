@@ -60,7 +60,8 @@ public final class LawSurvey implements Exhibit {
         List<String> misses = fits.stream()
                 .map(fit -> fit.law().family().name() + " by " + miss(fit) + " %")
                 .toList();
-        return curve.conditions().sample() + ": the points are missed (root mean square) by the "
+        String sample = curve.conditions().sample();
+        return (sample.isEmpty() ? "Flow curve" : sample) + ": the points are missed (root mean square) by the "
                 + String.join(", the ", misses) + ".";
     }
 
@@ -111,7 +112,7 @@ public final class LawSurvey implements Exhibit {
         Doubles rates = Doubles.logSpaced(
                 usable.x().values().smallest(), usable.x().values().largest(), 60);
         Figure.Builder figure = Figure.titled(
-                        "Laws on the viscosity of " + curve.conditions().sample())
+                        "Laws on the viscosity" + curve.conditions().ofSample())
                 .x(Quantity.SHEAR_RATE)
                 .y(Quantity.VISCOSITY);
         fits.forEach(fit -> figure.line(fit.law().family().name(), rates, rates.map(fit.law()::at)));

@@ -19,7 +19,7 @@ public final class StressExponent {
     /**
      * The exponent over all usable points of a flow curve, with its 95 % interval from the scatter about the line.
      *
-     * @throws RangeException if fewer than three points are usable, or one has no stress or rate above zero
+     * @throws RangeException if fewer than three points are usable, one has no stress or rate above zero, or all have one stress
      */
     public static Prediction of(FlowCurve curve) {
         Curve usable = curve.stress().usable();
@@ -35,6 +35,10 @@ public final class StressExponent {
         }
         if (usable.size() < 3) {
             throw new RangeException("a stress exponent needs three points at least, found " + usable.size());
+        }
+        if (usable.y().values().smallest() == usable.y().values().largest()) {
+            throw new RangeException("a stress exponent needs stresses that differ, found only "
+                    + NumberText.of(usable.y().at(0)) + " Pa");
         }
         double half = line.getSlopeConfidenceInterval();
         return Prediction.of(

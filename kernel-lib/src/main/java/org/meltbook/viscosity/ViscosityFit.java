@@ -237,9 +237,7 @@ public final class ViscosityFit implements Exhibit {
         Doubles rates = fit.problem().x();
         Doubles line = Doubles.logSpaced(rates.smallest(), rates.largest(), LINE_POINTS);
         Figure.Builder figure = Figure.titled(capital(family.name()) + " and measured viscosity"
-                        + (curve.conditions().sample().isEmpty()
-                                ? ""
-                                : " of " + curve.conditions().sample()))
+                        + curve.conditions().ofSample())
                 .x(Quantity.SHEAR_RATE)
                 .y(Quantity.VISCOSITY)
                 .line(family.name(), line, line.map(law::at))

@@ -9,6 +9,7 @@ import static org.junit.jupiter.api.Assertions.assertTrue;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
+import java.util.Optional;
 import java.util.OptionalDouble;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.Test;
@@ -155,7 +156,7 @@ class MeasurementContractTest {
                         rate,
                         Series.of(Quantity.VISCOSITY, 3, 2),
                         List.of(Verdict.SOUND, Verdict.doubtful("not yet steady"))),
-                java.util.Optional.empty(),
+                Optional.empty(),
                 List.of());
         assertEquals(1, apart.cautions().size());
         assertTrue(apart.cautions().get(0).startsWith("viscosity: 0 of 2 points unusable, 1 doubtful"));
@@ -191,14 +192,22 @@ class MeasurementContractTest {
         Series rate = Series.of(Quantity.SHEAR_RATE, 1, 2);
         Curve stress = Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, 3, 4));
         assertThrows(RangeException.class, () -> FrequencySweep.of(CONDITIONS, stress, stress, List.of()));
-        assertThrows(
-                RangeException.class,
-                () -> FlowCurve.of(CONDITIONS, stress, stress, java.util.Optional.empty(), List.of()));
+        assertThrows(RangeException.class, () -> FlowCurve.of(CONDITIONS, stress, stress, Optional.empty(), List.of()));
         assertThrows(RangeException.class, () -> Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, 3)));
         Curve elsewhere = Curve.of(Series.of(Quantity.SHEAR_RATE, 1, 3), Series.of(Quantity.VISCOSITY, 3, 4));
         assertThrows(
-                RangeException.class,
-                () -> FlowCurve.of(CONDITIONS, stress, elsewhere, java.util.Optional.empty(), List.of()));
+                RangeException.class, () -> FlowCurve.of(CONDITIONS, stress, elsewhere, Optional.empty(), List.of()));
+    }
+
+    @Test
+    void a_flow_curve_of_sound_points_takes_no_others() {
+        for (double wrong : new double[] {0, -1, Double.NaN, Double.POSITIVE_INFINITY}) {
+            double[] one = {1};
+            double[] other = {wrong};
+            assertThrows(RangeException.class, () -> FlowCurve.ofStress(CONDITIONS, one, other));
+            assertThrows(RangeException.class, () -> FlowCurve.ofStress(CONDITIONS, other, one));
+        }
+        assertThrows(RangeException.class, () -> FlowCurve.ofStress(CONDITIONS, new double[] {1, 2}, new double[] {1}));
     }
 
     @Test

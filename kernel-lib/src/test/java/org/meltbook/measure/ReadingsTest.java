@@ -4,6 +4,8 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import java.math.BigDecimal;
+import java.math.MathContext;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
 import org.meltbook.base.Doubles;
@@ -73,9 +75,7 @@ class ReadingsTest {
     }
 
     private static double three(double value) {
-        return new java.math.BigDecimal(value)
-                .round(new java.math.MathContext(3))
-                .doubleValue();
+        return new BigDecimal(value).round(new MathContext(3)).doubleValue();
     }
 
     @Test

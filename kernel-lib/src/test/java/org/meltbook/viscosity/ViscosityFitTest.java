@@ -6,6 +6,7 @@ import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import java.util.ArrayList;
+import java.util.Collections;
 import java.util.List;
 import java.util.Optional;
 import org.junit.jupiter.api.Test;
@@ -29,12 +30,19 @@ import org.meltbook.units.Prediction;
 import org.meltbook.units.Quantity;
 
 class ViscosityFitTest {
+    /** A curve whose rows all pass for sound, whatever their numbers. */
     private static FlowCurve curve(Doubles rates, Doubles viscosities) {
         double[] stresses = new double[rates.size()];
         for (int i = 0; i < stresses.length; i++) {
             stresses[i] = rates.at(i) * viscosities.at(i);
         }
-        return FlowCurve.ofStress(Conditions.of("made sample", "made in a test"), rates.toArray(), stresses);
+        Series rate = Series.of(Quantity.SHEAR_RATE, rates.toArray());
+        return FlowCurve.of(
+                Conditions.of("made sample", "made in a test"),
+                Curve.of(rate, Series.of(Quantity.SHEAR_STRESS, stresses)),
+                Curve.of(rate, Series.of(Quantity.VISCOSITY, viscosities.toArray())),
+                Optional.empty(),
+                List.of());
     }
 
     private static FlowCurve silicone(String fraction) {
@@ -114,6 +122,8 @@ class ViscosityFitTest {
                 1e-12);
         assertThrows(RangeException.class, () -> StressExponent.of(curve(Doubles.of(1, 2), Doubles.of(1, 1))));
         assertThrows(RangeException.class, () -> StressExponent.of(curve(Doubles.of(0, 1, 2), Doubles.of(1, 1, 1))));
+        FlowCurve oneStress = curve(Doubles.of(1, 2, 4), Doubles.of(4, 2, 1));
+        assertThrows(RangeException.class, () -> StressExponent.of(oneStress));
     }
 
     @Test
@@ -219,7 +229,7 @@ class ViscosityFitTest {
         Doubles rates = Doubles.logSpaced(1e-3, 1e3, 20);
         double[] viscosities = rates.map(truth::at).toArray();
         viscosities[3] = 1;
-        List<Verdict> verdicts = new ArrayList<>(java.util.Collections.nCopies(20, Verdict.SOUND));
+        List<Verdict> verdicts = new ArrayList<>(Collections.nCopies(20, Verdict.SOUND));
         verdicts.set(3, Verdict.unusable("torque below the limit"));
         Series rate = Series.of(Quantity.SHEAR_RATE, rates.toArray());
         FlowCurve made = FlowCurve.of(
@@ -252,6 +262,19 @@ class ViscosityFitTest {
         ViscosityFit fit = ViscosityFit.of(curve(rates, viscosities), Cross.FAMILY);
         assertFalse(fit.fit().estimate("lambda").status() == Estimate.Status.ESTIMATED, fit.toString());
         assertFalse(fit.cautions().isEmpty());
+    }
+
+    @Test
+    void a_sample_without_a_name_leaves_no_gap_in_the_words() {
+        FlowCurve named = curve(Doubles.logSpaced(0.01, 10, 12), Doubles.logSpaced(1000, 100, 12));
+        FlowCurve nameless =
+                FlowCurve.of(named.conditions().of(""), named.stress(), named.viscosity(), Optional.empty(), List.of());
+        LawSurvey survey = LawSurvey.of(nameless);
+        assertTrue(survey.headline().startsWith("Flow curve: the points are missed"), survey.headline());
+        assertEquals("Laws on the viscosity", survey.figures().get(0).title());
+        ViscosityFit fit = survey.fits().get(0);
+        assertEquals(
+                "Newtonian law and measured viscosity", fit.figures().get(0).title());
     }
 
     @Test
