@@ -1,6 +1,8 @@
 package org.meltbook.notebook;
 
+import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
+import java.util.Base64;
 import java.util.List;
 import java.util.Map;
 import org.meltbook.kernel.MimeBundle;
@@ -78,9 +80,7 @@ record NotebookPage(String title, String sentence, String html, List<String> pro
 
     private static Block picture(String mime, String data, MimeBundle bundle) {
         boolean text = mime.equals("image/svg+xml");
-        String base64 = text
-                ? java.util.Base64.getEncoder().encodeToString(data.getBytes(java.nio.charset.StandardCharsets.UTF_8))
-                : data;
+        String base64 = text ? Base64.getEncoder().encodeToString(data.getBytes(StandardCharsets.UTF_8)) : data;
         int width = bundle.metadata().get(mime) instanceof Map<?, ?> size && size.get("width") instanceof Number n
                 ? n.intValue()
                 : 0;

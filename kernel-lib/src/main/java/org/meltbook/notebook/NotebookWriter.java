@@ -9,6 +9,7 @@ import com.google.gson.JsonNull;
 import com.google.gson.JsonObject;
 import com.google.gson.JsonPrimitive;
 import java.util.List;
+import java.util.Locale;
 import java.util.Optional;
 import java.util.Set;
 import java.util.TreeMap;
@@ -39,7 +40,7 @@ final class NotebookWriter {
 
     private static JsonObject cell(Notebook.Cell cell) {
         JsonObject json = cell.extras();
-        json.addProperty("cell_type", cell.kind().name().toLowerCase(java.util.Locale.ROOT));
+        json.addProperty("cell_type", cell.kind().name().toLowerCase(Locale.ROOT));
         json.addProperty("id", cell.id());
         json.add("source", lines(cell.source()));
         if (cell.kind() == Notebook.Kind.CODE) {

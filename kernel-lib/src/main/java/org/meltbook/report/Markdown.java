@@ -10,9 +10,11 @@ import org.commonmark.Extension;
 import org.commonmark.ext.gfm.tables.TablesExtension;
 import org.commonmark.node.AbstractVisitor;
 import org.commonmark.node.Code;
+import org.commonmark.node.CustomNode;
 import org.commonmark.node.Heading;
 import org.commonmark.node.Image;
 import org.commonmark.node.Node;
+import org.commonmark.node.Paragraph;
 import org.commonmark.node.SoftLineBreak;
 import org.commonmark.node.Text;
 import org.commonmark.parser.Parser;
@@ -63,7 +65,7 @@ public final class Markdown {
 
     /** The first sentence of the first paragraph of the text, without markup; empty if there is none. */
     public static String firstSentence(String markdown) {
-        String paragraph = first(markdown, org.commonmark.node.Paragraph.class);
+        String paragraph = first(markdown, Paragraph.class);
         int end = paragraph.indexOf(". ");
         return end < 0 ? paragraph : paragraph.substring(0, end + 1);
     }
@@ -96,7 +98,7 @@ public final class Markdown {
             }
 
             @Override
-            public void visit(org.commonmark.node.CustomNode custom) {
+            public void visit(CustomNode custom) {
                 if (custom instanceof FormulaSyntax.Inline formula) {
                     words.append(formula.tex());
                 }

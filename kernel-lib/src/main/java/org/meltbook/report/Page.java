@@ -6,6 +6,7 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.util.Base64;
 import java.util.List;
+import java.util.Locale;
 import java.util.Objects;
 
 /**
@@ -68,7 +69,7 @@ public final class Page {
                     + "</span><pre><code class=\"language-java\">" + Html.escape(code.source())
                     + "</code></pre></div>\n";
         } else if (block instanceof Block.Printed printed) {
-            String kind = printed.kind().name().toLowerCase(java.util.Locale.ROOT);
+            String kind = printed.kind().name().toLowerCase(Locale.ROOT);
             return "<pre class=\"printed " + kind + "\">"
                     + Html.escape(printed.text().stripTrailing()) + "</pre>\n";
         } else if (block instanceof Block.Rich rich) {

@@ -4,6 +4,7 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertFalse;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import java.nio.charset.StandardCharsets;
 import java.util.Base64;
 import java.util.List;
 import java.util.Map;
@@ -53,7 +54,7 @@ class RenderersTest {
     void a_figure_is_a_picture_with_words_and_its_numbers_beside_it() {
         DisplayData shown = Renderers.all().render(figure(1));
         byte[] png = Base64.getDecoder().decode(text(shown, MIMEType.IMAGE_PNG));
-        assertEquals("PNG", new String(png, 1, 3, java.nio.charset.StandardCharsets.US_ASCII));
+        assertEquals("PNG", new String(png, 1, 3, StandardCharsets.US_ASCII));
         assertTrue(text(shown, MIMEType.TEXT_PLAIN).startsWith("Figure: Flow curve"));
     }
 

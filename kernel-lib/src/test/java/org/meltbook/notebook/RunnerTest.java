@@ -194,20 +194,6 @@ class RunnerTest {
         assertTrue(e.getMessage().contains(folder.resolve("data/no.csv").toString()));
     }
 
-    @Test
-    void text_without_end_is_cut_and_says_so() {
-        Recorder recorder = new Recorder();
-        String block = "x".repeat(Recorder.LONGEST / 2);
-        for (int i = 0; i < 4; i++) {
-            recorder.out(block);
-        }
-        String text = recorder.ended(new org.meltbook.kernel.Outcome.Done(java.util.Optional.empty()), 1).stream()
-                .map(output -> ((Output.Stream) output).text())
-                .reduce("", String::concat);
-        assertTrue(text.endsWith("[cut after 1000000 characters]\n"));
-        assertEquals(Recorder.LONGEST, text.indexOf('\n'));
-    }
-
     private Path store(String name, String... cells) {
         Path file = notebooks.resolve(name + ".ipynb");
         WholeFile.write(file, NotebookFile.write(NotebookText.of(cells)));

@@ -4,6 +4,7 @@ import static org.junit.jupiter.api.Assertions.assertEquals;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 import static org.junit.jupiter.api.Assertions.assertTrue;
 
+import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
 import java.util.Random;
@@ -162,7 +163,7 @@ class TablesTest {
 
     /** The curve as intake would judge it, with one more verdict. */
     private static Curve judged(Curve curve, int at, Verdict verdict) {
-        List<Verdict> verdicts = new java.util.ArrayList<>();
+        List<Verdict> verdicts = new ArrayList<>();
         for (int row = 0; row < curve.size(); row++) {
             double x = curve.x().at(row);
             String label = curve.x().quantity().label();
