@@ -1,6 +1,8 @@
 package org.meltbook.kernel;
 
+import java.util.HashMap;
 import java.util.HashSet;
+import java.util.Map;
 import java.util.Set;
 import org.objectweb.asm.ClassReader;
 import org.objectweb.asm.ClassVisitor;
@@ -25,17 +27,40 @@ final class CellClassRewriter {
 
     static byte[] rewrite(byte[] classFile) {
         ClassReader reader = new ClassReader(classFile);
+        Map<String, Integer> firstLines = firstLines(reader);
         ClassWriter writer = new ClassWriter(reader, 0);
         reader.accept(
                 new ClassVisitor(Opcodes.ASM9, writer) {
                     @Override
                     public MethodVisitor visitMethod(
                             int access, String name, String descriptor, String signature, String[] exceptions) {
-                        return new Guarded(super.visitMethod(access, name, descriptor, signature, exceptions));
+                        return new Guarded(
+                                super.visitMethod(access, name, descriptor, signature, exceptions),
+                                firstLines.getOrDefault(name + descriptor, 0));
                     }
                 },
                 0);
         return writer.toByteArray();
+    }
+
+    /** The first line of each method that has lines. */
+    private static Map<String, Integer> firstLines(ClassReader reader) {
+        Map<String, Integer> lines = new HashMap<>();
+        reader.accept(
+                new ClassVisitor(Opcodes.ASM9) {
+                    @Override
+                    public MethodVisitor visitMethod(
+                            int access, String name, String descriptor, String signature, String[] exceptions) {
+                        return new MethodVisitor(Opcodes.ASM9) {
+                            @Override
+                            public void visitLineNumber(int line, Label start) {
+                                lines.putIfAbsent(name + descriptor, line);
+                            }
+                        };
+                    }
+                },
+                ClassReader.SKIP_FRAMES);
+        return lines;
     }
 
     private static boolean endsProcess(String owner, String name) {
@@ -49,20 +74,23 @@ final class CellClassRewriter {
 
     private static final class Guarded extends MethodVisitor {
         private final Set<Label> passed = new HashSet<>();
-        private boolean entered;
+        private final int firstLine;
 
-        Guarded(MethodVisitor next) {
+        Guarded(MethodVisitor next, int firstLine) {
             super(Opcodes.ASM9, next);
+            this.firstLine = firstLine;
         }
 
-        /** The first line of a method is its entry: a check before it would belong to no line of the cell. */
+        /** The check at the start belongs to the first line; it stands before any label, to which a frame may belong. */
         @Override
-        public void visitLineNumber(int line, Label start) {
-            super.visitLineNumber(line, start);
-            if (!entered) {
-                entered = true;
-                check();
+        public void visitCode() {
+            super.visitCode();
+            if (firstLine > 0) {
+                Label start = new Label();
+                super.visitLabel(start);
+                super.visitLineNumber(firstLine, start);
             }
+            check();
         }
 
         @Override

@@ -22,6 +22,7 @@ final class InProcessControl extends DirectExecutionControl {
     private final Map<String, Object> values = new HashMap<>();
     private long nextKey;
     private Throwable thrown;
+    private Throwable notLoaded;
     private Class<?> lastClass;
 
     InProcessControl(CellLoader loader, CellRun run) {
@@ -54,10 +55,16 @@ final class InProcessControl extends DirectExecutionControl {
         return Optional.ofNullable(thrown);
     }
 
+    /** Why the classes of the last snippet cannot be loaded, which JShell passes over; empty if they were. */
+    Optional<Throwable> notLoaded() {
+        return Optional.ofNullable(notLoaded);
+    }
+
     /** Forgets what was kept for the last snippet. */
     void clear() {
         values.clear();
         thrown = null;
+        notLoaded = null;
         lastClass = null;
     }
 
@@ -71,6 +78,17 @@ final class InProcessControl extends DirectExecutionControl {
             }
         } catch (ReflectiveOperationException e) {
             throw new IllegalStateException("no variable " + variable + " in " + lastClass, e);
+        }
+    }
+
+    @Override
+    public void load(ClassBytecodes[] classes)
+            throws ClassInstallException, NotImplementedException, EngineTerminationException {
+        try {
+            super.load(classes);
+        } catch (ClassInstallException e) {
+            notLoaded = e;
+            throw e;
         }
     }
 

@@ -203,6 +203,9 @@ public final class JShellEvaluator implements Evaluator {
         if (event.status() == Status.REJECTED) {
             return Optional.of(failures.refused(event.snippet(), piece));
         }
+        if (control.notLoaded().isPresent()) {
+            return control.notLoaded().map(failures::beyondCompiler);
+        }
         JShellException seen = event.exception();
         if (run.stopAsked()) {
             return Optional.of(failures.interrupted(Stream.ofNullable(seen), piece));
