@@ -147,8 +147,9 @@ public final class JupyterKernel {
             reply.ifPresent(content -> send(socket, request, content));
         } catch (ZMQException e) {
             throw e;
-        } catch (RuntimeException | StackOverflowError e) {
-            // The compiler overflows on code nested too deeply, also when asked for completions: that ends no channel.
+        } catch (RuntimeException | Error e) {
+            // The compiler fails with an error on code nested too deeply, also when only asked about it: no channel
+            // ends with that.
             String kind = e.getClass().getSimpleName();
             send(socket, request, Execution.error(kind, String.valueOf(e.getMessage()), List.of()));
         } finally {
