@@ -141,7 +141,7 @@ public final class Rows {
 
         @Override
         public String label() {
-            return unit.isBlank() ? heading : heading + " [" + unit + "]";
+            return unit.isBlank() || unit.equals("1") ? heading : heading + " [" + unit + "]";
         }
     }
 

@@ -39,9 +39,12 @@ public final class Readings {
 
     /** One column: SI values, the conversion that led to them, and with how many digits they came. */
     private record Column(Series series, Conversion conversion, int digits) {
-        /** Half a unit of the last digit given, relative to the number of that row. */
+        /** Half a unit of the last digit given, relative to the number of that row; a zero is taken as written. */
         double rounding(int row) {
             double written = Math.abs(conversion.fromSi(series.at(row)));
+            if (written == 0) {
+                return 0;
+            }
             double exponent = Math.floor(Math.log10(written) + 1e-12);
             return 0.5 * Math.pow(10, exponent - digits + 1) / written;
         }

@@ -122,7 +122,8 @@ public final class RelaxationSpectrum implements Exhibit {
     }
 
     static double storageShare(double x) {
-        return x * x / (1 + x * x);
+        double square = x * x;
+        return square < Double.POSITIVE_INFINITY ? square / (1 + square) : 1;
     }
 
     static double lossShare(double x) {

@@ -47,11 +47,13 @@ public final class Prediction {
     /**
      * A number inside the tested window.
      *
-     * @param value the number in SI
+     * @param value the number in SI, finite
      * @param low   lower end of its 95 % interval in SI, NaN if not known
      * @param high  upper end of its 95 % interval in SI, NaN if not known
+     * @throws RangeException if {@code value} is infinite or NaN
      */
     public static Prediction of(String name, Quantity quantity, double value, double low, double high) {
+        Require.finite(name, value, quantity.siUnit());
         return new Prediction(name, quantity, new double[] {value, low, high}, Standing.WITHIN_WINDOW, List.of());
     }
 

@@ -57,6 +57,13 @@ class RowsTest {
     }
 
     @Test
+    void a_pure_number_has_no_unit_in_its_heading() {
+        assertEquals(
+                "φ",
+                Rows.titled("x").numbers("φ", "1", 0.2).build().columns().get(0).label());
+    }
+
+    @Test
     void an_empty_table_has_no_rows() {
         assertEquals(0, Rows.titled("none").build().size());
         assertEquals("none", Rows.titled("none").build().toString().strip());

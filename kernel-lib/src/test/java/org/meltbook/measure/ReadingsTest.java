@@ -52,6 +52,18 @@ class ReadingsTest {
     }
 
     @Test
+    void a_stress_of_zero_beside_a_viscosity_leaves_the_viscosity_in_doubt() {
+        FlowCurve curve = NONE.with(Quantity.SHEAR_RATE, LabUnit.parse("1/s"), Doubles.of(1, 2))
+                .with(Quantity.SHEAR_STRESS, LabUnit.parse("Pa"), Doubles.of(0, 600))
+                .with(Quantity.VISCOSITY, LabUnit.parse("Pa·s"), Doubles.of(300, 300))
+                .flowCurve();
+        assertEquals(Verdict.Standing.UNUSABLE, curve.stress().verdicts().get(0).standing());
+        assertEquals(
+                Verdict.Standing.DOUBTFUL, curve.viscosity().verdicts().get(0).standing());
+        assertEquals(Verdict.SOUND, curve.viscosity().verdicts().get(1));
+    }
+
+    @Test
     void rounding_to_three_digits_is_no_doubt_and_one_digit_wrong_is() {
         Random random = new Random(5);
         for (int i = 0; i < 300; i++) {

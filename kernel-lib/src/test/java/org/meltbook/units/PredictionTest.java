@@ -6,6 +6,8 @@ import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.ValueSource;
 import org.meltbook.base.RangeException;
 
 class PredictionTest {
@@ -21,6 +23,12 @@ class PredictionTest {
         assertEquals(List.of("one lot", "a decade above the highest rate"), beyond.cautions());
         assertTrue(beyond.toString().contains("(extrapolated)"), beyond.toString());
         assertEquals(Prediction.Standing.WITHIN_WINDOW, INSIDE.standing());
+    }
+
+    @ParameterizedTest
+    @ValueSource(doubles = {Double.NaN, Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY})
+    void refuses_to_call_a_number_what_is_none(double none) {
+        assertThrows(RangeException.class, () -> Prediction.of("viscosity", Quantity.VISCOSITY, none, 1, 2));
     }
 
     @Test
