@@ -7,6 +7,7 @@ import java.net.URISyntaxException;
 import java.net.URL;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
+import java.nio.file.InvalidPathException;
 import java.nio.file.Path;
 import java.nio.file.StandardCopyOption;
 import java.security.CodeSource;
@@ -216,7 +217,18 @@ public final class Attachment {
     private static Optional<Path> folderNamed(Map<String, String> environment, String variable) {
         return Optional.ofNullable(environment.get(variable))
                 .filter(v -> !v.isBlank())
-                .map(Path::of);
+                .map(v -> folder(variable, v));
+    }
+
+    private static Path folder(String variable, String name) {
+        try {
+            return Path.of(name);
+        } catch (InvalidPathException e) {
+            throw new AttachmentException(
+                    variable + " names a folder that this system's language setting (LANG, LC_ALL) cannot spell: '"
+                            + name + "'; set a UTF-8 one, such as LC_ALL=C.UTF-8",
+                    e);
+        }
     }
 
     private static String reason(Exception e) {

@@ -182,12 +182,16 @@ final class Failures {
         return lines;
     }
 
+    /** The causes of what was thrown, without those whose words its own message has already. */
     private List<String> causesOf(Throwable thrown) {
         List<String> lines = new ArrayList<>();
+        String told = message(thrown);
         Throwable cause = thrown.getCause();
-        while (cause != null && lines.size() < MOST_CAUSES) {
+        for (int depth = 0; cause != null && depth < MOST_CAUSES; depth++) {
             String kind = speaksForItself.test(cause) ? "" : cause.getClass().getSimpleName() + ": ";
-            lines.add("caused by " + kind + message(cause));
+            if (!told.contains(message(cause))) {
+                lines.add("caused by " + kind + message(cause));
+            }
             cause = cause.getCause();
         }
         return lines;
@@ -195,7 +199,9 @@ final class Failures {
 
     private static String message(Throwable thrown) {
         String message = thrown.getMessage();
-        return message == null || message.isBlank() ? "no message" : message;
+        return message == null || message.isBlank()
+                ? "no message"
+                : WRAPPER.matcher(message).replaceAll("");
     }
 
     private static List<String> pointed(CellText cell, int offset, String message) {

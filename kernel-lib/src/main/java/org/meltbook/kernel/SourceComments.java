@@ -29,6 +29,8 @@ import java.util.Map;
 import java.util.Optional;
 import java.util.jar.JarEntry;
 import java.util.jar.JarFile;
+import java.util.regex.Matcher;
+import java.util.regex.Pattern;
 import java.util.stream.Stream;
 import javax.tools.JavaCompiler;
 import javax.tools.JavaFileObject;
@@ -42,6 +44,7 @@ import javax.tools.ToolProvider;
 final class SourceComments {
     private static final String ROOT = "META-INF/meltbook/sources";
     private static final String SUFFIX = ".java";
+    private static final Pattern VALUE = Pattern.compile("\\{@value #(\\w+)}");
     private static final int DEEPEST = 5;
 
     private final ClassLoader classes;
@@ -151,7 +154,7 @@ final class SourceComments {
 
     private Parsed parse(String source) {
         try (InputStream in = classes.getResourceAsStream(ROOT + "/" + source)) {
-            String text = new String(in.readAllBytes(), StandardCharsets.UTF_8);
+            String text = withValues(new String(in.readAllBytes(), StandardCharsets.UTF_8));
             JavaCompiler compiler = ToolProvider.getSystemJavaCompiler();
             JavacTask task = (JavacTask) compiler.getTask(
                     Writer.nullWriter(), null, problem -> {}, List.of("-proc:none"), null, List.of(file(source, text)));
@@ -159,6 +162,15 @@ final class SourceComments {
         } catch (IOException e) {
             throw new UncheckedIOException("the source " + source + " cannot be read", e);
         }
+    }
+
+    /** The source with the constants of its own file written out where a comment cites one. */
+    private static String withValues(String source) {
+        return VALUE.matcher(source).replaceAll(cited -> {
+            Matcher constant =
+                    Pattern.compile("\\b" + cited.group(1) + " = ([^;]+);").matcher(source);
+            return Matcher.quoteReplacement(constant.find() ? constant.group(1) : cited.group(1));
+        });
     }
 
     private static JavaFileObject file(String name, String text) {

@@ -10,6 +10,8 @@ import java.util.Objects;
 import java.util.Optional;
 import java.util.TreeSet;
 import java.util.stream.Collectors;
+import java.util.stream.DoubleStream;
+import java.util.stream.IntStream;
 import org.meltbook.base.Doubles;
 import org.meltbook.figure.Axis;
 import org.meltbook.figure.Figure;
@@ -27,6 +29,9 @@ final class FigureData {
     private static final MathContext DIGITS = new MathContext(5);
     /** Two roundings to five digits differ by at most one unit in the fifth. */
     private static final double TOLERANCE = 1.01e-4;
+
+    /** A series of more numbers than this is thinned out. */
+    private static final int LONGEST = 2000;
 
     private FigureData() {}
 
@@ -138,10 +143,22 @@ final class FigureData {
         }
     }
 
-    /** Numbers in one line of text, so that a figure takes a few lines of the notebook's file. */
+    /**
+     * Numbers in one line of text, so that a figure takes a few lines of the notebook's file. Of a long series it is
+     * every so many-th number, and how many there are: a notebook is no place for millions.
+     */
     private static String numbers(Doubles values) {
-        return values.stream()
-                .mapToObj(v -> Double.isFinite(v)
+        int step = (values.size() + LONGEST - 1) / LONGEST;
+        if (step <= 1) {
+            return text(values.stream());
+        }
+        return "one in " + step + " of " + values.size() + ": "
+                + text(IntStream.iterate(0, i -> i < values.size(), i -> i + step)
+                        .mapToDouble(values::at));
+    }
+
+    private static String text(DoubleStream values) {
+        return values.mapToObj(v -> Double.isFinite(v)
                         ? String.valueOf(new BigDecimal(v).round(DIGITS).doubleValue())
                         : String.valueOf(v))
                 .map(text -> text.endsWith(".0") ? text.substring(0, text.length() - 2) : text)

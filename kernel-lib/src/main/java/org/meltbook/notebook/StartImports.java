@@ -6,6 +6,7 @@ import java.util.List;
 final class StartImports {
     /** The imports, in the order in which they are made. */
     static final List<String> LINES = List.of(
+            "import java.nio.file.Path;",
             "import java.util.*;",
             "import java.util.stream.*;",
             "import org.meltbook.base.*;",

@@ -48,6 +48,15 @@ class AttachmentTest {
                 Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", " "), "Linux", home));
     }
 
+    /** Under LANG=C a folder such as /home/jürgen cannot be spelt; a zero byte cannot be in any language. */
+    @Test
+    void names_the_variable_whose_folder_cannot_be_spelt() {
+        AttachmentException refused = assertThrows(
+                AttachmentException.class,
+                () -> Attachment.dataFolder(Map.of("JUPYTER_DATA_DIR", "/a\0b"), "Linux", Path.of("/home/q")));
+        assertTrue(refused.getMessage().startsWith("JUPYTER_DATA_DIR names a folder that"), refused::getMessage);
+    }
+
     @Test
     void writes_a_spec_with_absolute_paths_and_a_copy_of_the_program() throws IOException {
         Attachment attachment = Attachment.in(folder.resolve("jupyter"));

@@ -149,6 +149,21 @@ class CellFailureTest {
     }
 
     @Test
+    void does_not_tell_a_cause_whose_words_the_message_has_already() {
+        Outcome.Failed failed = failure("var inner = new IllegalArgumentException(\"unit 'pas' is not known\");\n"
+                + "throw new IllegalStateException(\"line 3: unit 'pas' is not known\", inner);");
+        assertEquals(
+                List.of(),
+                failed.report().stream().filter(l -> l.startsWith("caused by")).toList());
+    }
+
+    @Test
+    void names_a_variable_that_is_null_as_the_reader_wrote_it() {
+        Outcome.Failed failed = failure("String lot = null;\nlot.length()");
+        assertEquals("Cannot invoke \"String.length()\" because \"lot\" is null", failed.message());
+    }
+
+    @Test
     void says_which_value_cannot_be_shown() {
         evaluator.run("class Shy { public String toString() { throw new IllegalStateException(\"no\"); } }", outlet);
         Outcome.Failed failed = failure("new Shy()");

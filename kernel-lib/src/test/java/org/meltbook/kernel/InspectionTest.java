@@ -153,6 +153,14 @@ class InspectionTest {
     }
 
     @Test
+    void writes_out_the_constants_that_a_comment_cites() {
+        // SpectrumFit.MODES_PER_DECADE is 3.
+        String text = text("org.meltbook.spectrum.SpectrumFit.of(");
+        assertTrue(text.contains("The spectrum of a sweep with 3 relaxation times a decade."), text);
+        assertFalse(text.contains("@value"), text);
+    }
+
+    @Test
     void says_nothing_of_an_unknown_name() {
         assertFalse(evaluator.inspect("nothingOfThatName", 5).isPresent());
         assertFalse(evaluator.inspect("", 0).isPresent());

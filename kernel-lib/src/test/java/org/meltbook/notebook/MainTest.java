@@ -43,6 +43,19 @@ class MainTest {
         assertTrue(said().contains(file + ": cell 2 (cell3): line 3 of its output differs"), said());
     }
 
+    /** What the README tells under "Your own file", word for word. */
+    @Test
+    void reads_the_file_of_the_readme_by_the_line_of_the_readme() throws IOException {
+        String readme = Files.readString(Path.of("..", "README.md"));
+        String part = readme.substring(readme.indexOf("## Your own file"));
+        Files.writeString(folder.resolve("lot-7.csv"), part.split("```")[1].strip());
+        String line = part.substring(part.indexOf("`Exports.read(") + 1).split("`")[0];
+        store("00-own", line + ".frequencySweep()", "Path.of(\"known from the start\")");
+        assertEquals(0, run("run", folder.toString(), "--into", into()), this::said);
+        String page = Files.readString(folder.resolve("out/00-own.html"));
+        assertTrue(page.contains("at 190.0 °C") && page.contains(">840.0<"), page);
+    }
+
     @Test
     void a_failing_cell_is_named_with_its_line_and_cause_and_no_stack() throws IOException {
         Path file = store("00-broken", "int[] few = {1};\nfew[3]");

@@ -104,6 +104,18 @@ class RenderersTest {
     }
 
     @Test
+    void a_series_of_very_many_points_is_thinned_out_in_the_data_of_its_figure() {
+        Doubles many = Doubles.logSpaced(1, 10, 2001);
+        Figure figure = Figure.titled("Many")
+                .x(Quantity.SHEAR_RATE)
+                .y(Quantity.VISCOSITY)
+                .marks("measured", many, many)
+                .build();
+        String data = FigureData.of(List.of(figure), List.of("")).toString();
+        assertTrue(data.contains("x=one in 2 of 2001: 1 1.0023 "), data);
+    }
+
+    @Test
     void a_figure_with_one_more_layer_is_another_figure() {
         Map<String, Object> one = Map.of("layers", List.of("a"));
         Map<String, Object> two = Map.of("layers", List.of("a", "b"));
