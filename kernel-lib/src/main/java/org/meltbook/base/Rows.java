@@ -3,6 +3,7 @@ package org.meltbook.base;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Objects;
+import java.util.stream.IntStream;
 
 /**
  * A table as data: a title, columns of numbers or text, each with its unit, and notes below. Results hand their
@@ -42,6 +43,24 @@ public final class Rows {
     /** How many rows there are. */
     public int size() {
         return columns.isEmpty() ? 0 : columns.get(0).size();
+    }
+
+    /** The first rows, {@code count} at most, and then the given notes in place of its own. */
+    public Rows first(int count, List<String> otherNotes) {
+        int[] places = IntStream.range(0, Math.min(count, size())).toArray();
+        List<Column> shorter = new ArrayList<>();
+        for (Column column : columns) {
+            shorter.add(
+                    column instanceof NumberColumn numbers
+                            ? new NumberColumn(
+                                    numbers.heading(),
+                                    numbers.unit(),
+                                    numbers.values().pick(places))
+                            : new TextColumn(
+                                    column.heading(),
+                                    ((TextColumn) column).values().subList(0, places.length)));
+        }
+        return new Rows(title, shorter, otherNotes);
     }
 
     /**

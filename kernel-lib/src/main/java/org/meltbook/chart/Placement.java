@@ -160,6 +160,7 @@ final class Placement {
     private Track marks(Layer.Marks marks, int index) {
         DoubleStream.Builder xs = DoubleStream.builder();
         DoubleStream.Builder ys = DoubleStream.builder();
+        Pixels taken = new Pixels();
         for (int i = 0; i < marks.x().size(); i++) {
             double px = marks.x().at(i);
             double py = marks.y().at(i);
@@ -173,7 +174,7 @@ final class Placement {
             } else if (left || below) {
                 tally.pointsAtEdge++;
                 edgeMarks.add(new EdgeMark(left ? x.min() : px, below ? y.min() : py, left, below, colour(index)));
-            } else {
+            } else if (taken.firstAt(x.fraction(px), y.fraction(py))) {
                 xs.add(px);
                 ys.add(py);
             }

@@ -41,6 +41,7 @@ public final class Renderers {
         rich(renderer, Prediction.class, Renderers::show);
         rich(renderer, Collection.class, Renderers::showEach);
         picture(renderer, Figure.class, Renderers::show);
+        picture(renderer, Figure.Builder.class, (figure, data) -> show(figure.build(), data));
         picture(renderer, Chart.class, Renderers::show);
     }
 

@@ -64,13 +64,9 @@ public final class HtmlTable {
 
     /** The table as plain text; one of more than {@value #LONGEST_PLAIN} rows is shortened and says so. */
     public static String plain(Rows rows) {
-        if (rows.size() <= LONGEST_PLAIN) {
-            return rows.toString();
-        }
-        List<String> lines = rows.toString().lines().toList();
-        int head = lines.size() - rows.size() - rows.notes().size();
-        String start = lines.stream().limit(head + LONGEST_PLAIN).collect(Collectors.joining("\n"));
-        return start + "\n  " + String.join("\n  ", notes(rows, LONGEST_PLAIN));
+        return rows.size() <= LONGEST_PLAIN
+                ? rows.toString()
+                : rows.first(LONGEST_PLAIN, notes(rows, LONGEST_PLAIN)).toString();
     }
 
     private static List<String> notes(Rows rows, int shown) {

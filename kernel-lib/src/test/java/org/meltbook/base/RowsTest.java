@@ -64,6 +64,23 @@ class RowsTest {
     }
 
     @Test
+    void its_first_rows_are_those_of_the_whole_table() {
+        Rows rows = Rows.titled("x")
+                .numbers("a", "s", 1, 2, 3)
+                .text("b", List.of("p", "q", "r"))
+                .note("old")
+                .build();
+        assertEquals(
+                Rows.titled("x")
+                        .numbers("a", "s", 1, 2)
+                        .text("b", List.of("p", "q"))
+                        .note("new")
+                        .build(),
+                rows.first(2, List.of("new")));
+        assertEquals(rows, rows.first(9, List.of("old")));
+    }
+
+    @Test
     void an_empty_table_has_no_rows() {
         assertEquals(0, Rows.titled("none").build().size());
         assertEquals("none", Rows.titled("none").build().toString().strip());

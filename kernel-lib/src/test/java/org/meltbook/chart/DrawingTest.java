@@ -24,6 +24,7 @@ import org.knowm.xchart.XYSeries.XYSeriesRenderStyle;
 import org.meltbook.base.Doubles;
 import org.meltbook.figure.Axis;
 import org.meltbook.figure.Figure;
+import org.meltbook.units.Quantity;
 
 class DrawingTest {
     private final Locale locale = Locale.getDefault();
@@ -31,6 +32,26 @@ class DrawingTest {
     @AfterEach
     void restoreLocale() {
         Locale.setDefault(locale);
+    }
+
+    @Test
+    void a_million_points_draw_the_picture_of_those_that_can_be_told_apart() {
+        double[] x = new double[1_000_000];
+        double[] y = new double[x.length];
+        for (int i = 0; i < x.length; i++) {
+            x[i] = Math.exp(i * 1e-5);
+            y[i] = 2 * x[i];
+        }
+        Drawing all = Drawing.of(Figure.titled("Many points")
+                .x(Quantity.SHEAR_RATE)
+                .y(Quantity.SHEAR_STRESS)
+                .marks("measured", Doubles.of(x), Doubles.of(y))
+                .build());
+        double[] drawn = all.chart().getSeries("measured").getXData();
+        assertEquals(x[0], drawn[0]);
+        // one marker at most for each pixel that the rising curve crosses, along and up
+        assertTrue(drawn.length <= 1440 + 960, drawn.length + " markers");
+        assertTrue(drawn[drawn.length - 1] > 0.99 * x[x.length - 1], "the last pixel is reached");
     }
 
     @Test

@@ -51,6 +51,15 @@ class RenderersTest {
     }
 
     @Test
+    void a_figure_that_was_not_built_yet_is_drawn_too() {
+        Figure.Builder unbuilt =
+                Figure.titled("Flow curve").x(Quantity.SHEAR_RATE).y(Quantity.VISCOSITY);
+        assertEquals(
+                text(Renderers.all().render(unbuilt.build()), MIMEType.IMAGE_PNG),
+                text(Renderers.all().render(unbuilt), MIMEType.IMAGE_PNG));
+    }
+
+    @Test
     void a_figure_is_a_picture_with_words_and_its_numbers_beside_it() {
         DisplayData shown = Renderers.all().render(figure(1));
         byte[] png = Base64.getDecoder().decode(text(shown, MIMEType.IMAGE_PNG));
