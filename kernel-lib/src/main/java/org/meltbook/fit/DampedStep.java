@@ -1,0 +1,178 @@
+package org.meltbook.fit;
+
+import java.util.Arrays;
+
+/**
+ * The step that lowers a linearised sum of squares most, damped, between bounds. The Jacobian is reduced once to its
+ * triangle R and the turned residuals q; each damping then costs only a small problem. Without allocation.
+ */
+final class DampedStep {
+    private final Workspace workspace;
+    private final int rows;
+    private final int n;
+    private final double[] lowest;
+    private final double[] highest;
+    private final double[] scales;
+    private final double[] matrix; // the Jacobian, column by column, overwritten by its decomposition
+    private final double[] right;
+    private final double[] triangle; // R, row k, column j at j * n + k
+    private final double[] turned; // q
+    private final double[] slope;
+    private final double[] small; // R and the damping below it, column by column
+    private final double[] smallRight;
+    private final double[] step;
+    private final boolean[] fixed;
+    private final int[] active;
+
+    DampedStep(Workspace workspace) {
+        this.workspace = workspace;
+        this.rows = workspace.points();
+        this.n = workspace.coordinates();
+        this.lowest = new double[n];
+        this.highest = new double[n];
+        for (int j = 0; j < n; j++) {
+            lowest[j] = workspace.lowest(j);
+            highest[j] = workspace.highest(j);
+        }
+        this.scales = new double[n];
+        this.matrix = new double[rows * n];
+        this.right = new double[rows];
+        this.triangle = new double[n * n];
+        this.turned = new double[n];
+        this.slope = new double[n];
+        this.small = new double[2 * n * n];
+        this.smallRight = new double[2 * n];
+        this.step = new double[n];
+        this.fixed = new boolean[n];
+        this.active = new int[n];
+    }
+
+    /** Forgets the column lengths seen so far. */
+    void reset() {
+        Arrays.fill(scales, 0);
+    }
+
+    /** Takes a linearisation, with the loss, and decomposes it. */
+    void take(double[] residuals, double[] jacobian) {
+        System.arraycopy(jacobian, 0, matrix, 0, rows * n);
+        System.arraycopy(residuals, 0, right, 0, rows);
+        Loss loss = workspace.problem().loss();
+        if (!loss.plain()) {
+            weigh(loss);
+        }
+        for (int j = 0; j < n; j++) {
+            double square = 0;
+            double product = 0;
+            for (int i = j * rows; i < (j + 1) * rows; i++) {
+                square += matrix[i] * matrix[i];
+                product += matrix[i] * right[i - j * rows];
+            }
+            scales[j] = Math.max(scales[j], Math.sqrt(square));
+            slope[j] = product;
+        }
+        Reflections.reduce(matrix, rows, n, right);
+        for (int j = 0; j < n; j++) {
+            turned[j] = right[j];
+            for (int k = 0; k < n; k++) {
+                triangle[j * n + k] = k <= j ? matrix[j * rows + k] : 0;
+            }
+        }
+    }
+
+    /** Rows so scaled that gradient and curvature are those of the loss; curvature is kept above a tenth of the weight. */
+    private void weigh(Loss loss) {
+        for (int i = 0; i < rows; i++) {
+            double weight = loss.weight(right[i]);
+            double root = Math.sqrt(Math.max(loss.curvature(right[i]), 0.1 * weight));
+            right[i] = root > 0 ? right[i] * weight / root : 0;
+            for (int j = 0; j < n; j++) {
+                matrix[j * rows + i] *= root;
+            }
+        }
+    }
+
+    /** One coordinate of the step. */
+    double at(int j) {
+        return step[j];
+    }
+
+    /**
+     * Works out the step.
+     *
+     * @return by how much it lowers the linearised sum of squares
+     */
+    double solve(double[] here, boolean[] held, double damping) {
+        Arrays.fill(step, 0);
+        for (int j = 0; j < n; j++) {
+            fixed[j] = held[j]
+                    || here[j] <= lowest[j] && slope[j] >= 0
+                    || here[j] >= highest[j] && slope[j] <= 0
+                    || scales[j] == 0;
+        }
+        boolean inside = false;
+        while (!inside) {
+            solveActive(Math.sqrt(damping));
+            inside = true;
+            for (int j = 0; j < n; j++) {
+                if (!fixed[j] && !(here[j] + step[j] >= lowest[j] && here[j] + step[j] <= highest[j])) {
+                    step[j] = (step[j] < 0 ? lowest[j] : highest[j]) - here[j];
+                    fixed[j] = true;
+                    inside = false;
+                }
+            }
+        }
+        return gain();
+    }
+
+    /** The damped step in the coordinates that are not fixed, with the others where they are. */
+    private void solveActive(double root) {
+        int m = 0;
+        for (int j = 0; j < n; j++) {
+            if (!fixed[j]) {
+                active[m++] = j;
+            }
+        }
+        int height = root > 0 ? n + m : n;
+        Arrays.fill(smallRight, 0);
+        for (int k = 0; k < n; k++) {
+            double sum = turned[k];
+            for (int j = k; j < n; j++) {
+                sum += fixed[j] ? triangle[j * n + k] * step[j] : 0;
+            }
+            smallRight[k] = -sum;
+        }
+        for (int c = 0; c < m; c++) {
+            int j = active[c];
+            for (int k = 0; k < n; k++) {
+                small[c * height + k] = triangle[j * n + k] / scales[j];
+            }
+            if (root > 0) {
+                Arrays.fill(small, c * height + n, (c + 1) * height, 0);
+                small[c * height + n + c] = root;
+            }
+        }
+        Reflections.reduce(small, height, m, smallRight);
+        for (int c = m - 1; c >= 0; c--) {
+            double sum = smallRight[c];
+            for (int d = c + 1; d < m; d++) {
+                sum -= small[d * height + c] * step[active[d]] * scales[active[d]];
+            }
+            double pivot = small[c * height + c];
+            // a combination that the data do not fix at all stays where it is
+            step[active[c]] = Math.abs(pivot) > 1e-15 ? sum / pivot / scales[active[c]] : 0;
+        }
+    }
+
+    /** |q|² − |q + R step|². */
+    private double gain() {
+        double gain = 0;
+        for (int k = 0; k < n; k++) {
+            double change = 0;
+            for (int j = k; j < n; j++) {
+                change += triangle[j * n + k] * step[j];
+            }
+            gain -= change * (2 * turned[k] + change);
+        }
+        return gain;
+    }
+}

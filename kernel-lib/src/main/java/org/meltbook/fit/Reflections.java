@@ -1,0 +1,45 @@
+package org.meltbook.fit;
+
+/** Householder's reduction of a matrix, held column by column in one array, to a triangle; in place. */
+final class Reflections {
+    private Reflections() {}
+
+    /**
+     * Turns the matrix into its upper triangle R and the right-hand side along with it; what stood below is left over.
+     *
+     * @param matrix element of row i and column j at {@code j * rows + i}
+     * @param rows   at least as many as columns
+     */
+    static void reduce(double[] matrix, int rows, int columns, double[] right) {
+        for (int k = 0; k < columns; k++) {
+            int base = k * rows;
+            double square = 0;
+            for (int i = k; i < rows; i++) {
+                square += matrix[base + i] * matrix[base + i];
+            }
+            if (square == 0) {
+                continue;
+            }
+            double length = matrix[base + k] > 0 ? -Math.sqrt(square) : Math.sqrt(square);
+            double head = matrix[base + k] - length;
+            double factor = 1 / (length * head); // −2 / |v|²
+            matrix[base + k] = head;
+            for (int j = k + 1; j < columns; j++) {
+                turn(matrix, j * rows, matrix, base, k, rows, factor);
+            }
+            turn(right, 0, matrix, base, k, rows, factor);
+            matrix[base + k] = length;
+        }
+    }
+
+    private static void turn(double[] column, int at, double[] axis, int base, int from, int to, double factor) {
+        double product = 0;
+        for (int i = from; i < to; i++) {
+            product += axis[base + i] * column[at + i];
+        }
+        product *= factor;
+        for (int i = from; i < to; i++) {
+            column[at + i] += product * axis[base + i];
+        }
+    }
+}
