@@ -15,12 +15,15 @@ final class DampedStep {
     private final double[] scales;
     private final double[] matrix; // the Jacobian, column by column, overwritten by its decomposition
     private final double[] right;
+    private final double[] heads;
     private final double[] triangle; // R, row k, column j at j * n + k
     private final double[] turned; // q
     private final double[] slope;
     private final double[] small; // R and the damping below it, column by column
     private final double[] smallRight;
+    private final double[] smallHeads;
     private final double[] step;
+    private final double[] straight; // the step before it was bent
     private final boolean[] fixed;
     private final int[] active;
 
@@ -37,11 +40,14 @@ final class DampedStep {
         this.scales = new double[n];
         this.matrix = new double[rows * n];
         this.right = new double[rows];
+        this.heads = new double[n];
         this.triangle = new double[n * n];
         this.turned = new double[n];
         this.slope = new double[n];
         this.small = new double[2 * n * n];
         this.smallRight = new double[2 * n];
+        this.smallHeads = new double[n];
+        this.straight = new double[n];
         this.step = new double[n];
         this.fixed = new boolean[n];
         this.active = new int[n];
@@ -67,10 +73,10 @@ final class DampedStep {
                 square += matrix[i] * matrix[i];
                 product += matrix[i] * right[i - j * rows];
             }
-            scales[j] = Math.max(scales[j], Math.sqrt(square));
+            scales[j] = Math.max(0.5 * scales[j], Math.sqrt(square));
             slope[j] = product;
         }
-        Reflections.reduce(matrix, rows, n, right);
+        Reflections.reduce(matrix, rows, n, right, heads);
         for (int j = 0; j < n; j++) {
             turned[j] = right[j];
             for (int k = 0; k < n; k++) {
@@ -111,7 +117,7 @@ final class DampedStep {
         }
         boolean inside = false;
         while (!inside) {
-            solveActive(Math.sqrt(damping));
+            solveActive(Math.sqrt(damping), turned);
             inside = true;
             for (int j = 0; j < n; j++) {
                 if (!fixed[j] && !(here[j] + step[j] >= lowest[j] && here[j] + step[j] <= highest[j])) {
@@ -125,7 +131,7 @@ final class DampedStep {
     }
 
     /** The damped step in the coordinates that are not fixed, with the others where they are. */
-    private void solveActive(double root) {
+    private void solveActive(double root, double[] target) {
         int m = 0;
         for (int j = 0; j < n; j++) {
             if (!fixed[j]) {
@@ -135,7 +141,7 @@ final class DampedStep {
         int height = root > 0 ? n + m : n;
         Arrays.fill(smallRight, 0);
         for (int k = 0; k < n; k++) {
-            double sum = turned[k];
+            double sum = target[k];
             for (int j = k; j < n; j++) {
                 sum += fixed[j] ? triangle[j * n + k] * step[j] : 0;
             }
@@ -151,7 +157,7 @@ final class DampedStep {
                 small[c * height + n + c] = root;
             }
         }
-        Reflections.reduce(small, height, m, smallRight);
+        Reflections.reduce(small, height, m, smallRight, smallHeads);
         for (int c = m - 1; c >= 0; c--) {
             double sum = smallRight[c];
             for (int d = c + 1; d < m; d++) {
@@ -160,6 +166,46 @@ final class DampedStep {
             double pivot = small[c * height + c];
             // a combination that the data do not fix at all stays where it is
             step[active[c]] = Math.abs(pivot) > 1e-15 ? sum / pivot / scales[active[c]] : 0;
+        }
+    }
+
+    /**
+     * Bends the step along the curve of the model (M. K. Transtrum, J. P. Sethna, arXiv:1201.5885, from memory).
+     *
+     * @param second second derivatives of the residuals along the step; overwritten
+     * @return length of the bend over that of the step; the step is bent only if that is a number within bounds
+     */
+    double bend(double[] here, double damping, double[] second) {
+        Reflections.turn(matrix, rows, n, second, heads);
+        System.arraycopy(step, 0, straight, 0, n);
+        for (int j = 0; j < n; j++) {
+            second[j] *= 0.5;
+            step[j] = 0;
+        }
+        solveActive(Math.sqrt(damping), second);
+        double bend = 0;
+        double length = 0;
+        boolean inside = true;
+        for (int j = 0; j < n; j++) {
+            double scaled = step[j] * scales[j];
+            bend += scaled * scaled;
+            length += straight[j] * straight[j] * scales[j] * scales[j];
+            double end = here[j] + straight[j] + step[j];
+            inside &= fixed[j] || end >= lowest[j] && end <= highest[j];
+        }
+        for (int j = 0; j < n; j++) {
+            step[j] = straight[j] + (inside ? step[j] : 0);
+        }
+        return Math.sqrt(bend / length);
+    }
+
+    /** Jacobian times step, added to nothing: how the residuals change along it to first order. */
+    void change(double[] jacobian, double[] into) {
+        Arrays.fill(into, 0);
+        for (int j = 0; j < n; j++) {
+            for (int i = 0; i < rows; i++) {
+                into[i] += jacobian[j * rows + i] * step[j];
+            }
         }
     }
 

@@ -5,7 +5,9 @@ import java.util.List;
 /** A model known by its values alone: derivatives are central differences, extrapolated once to step zero. */
 record DifferencedModel(String name, List<Parameter> parameters, Formula formula) implements Model {
     /** Share of a parameter by which it is changed: rounding and the left-over fourth-order term are about equal. */
-    private static final double STEP = 2e-3;
+    private static final double STEP = 2e-4;
+    /** A change below this share of the value drowns in rounding. */
+    private static final double SEEN = 1e-9;
 
     DifferencedModel {
         parameters = List.copyOf(parameters);
@@ -27,17 +29,19 @@ record DifferencedModel(String name, List<Parameter> parameters, Formula formula
     private double slope(double x, double[] values, int k) {
         double kept = values[k];
         Parameter parameter = parameters.get(k);
-        double step = STEP * Math.max(Math.abs(kept), 1e-3);
         double room = Math.min(kept - parameter.low(), parameter.high() - kept);
-        double slope;
-        if (room >= step) {
-            slope = (8 * difference(x, values, k, step / 2) - difference(x, values, k, step)) / (6 * step);
-        } else {
+        double step = STEP * (kept == 0 ? STEP : Math.abs(kept));
+        if (room < step) {
             double inward = kept - parameter.low() < parameter.high() - kept ? step : -step;
-            slope = oneSided(x, values, k, inward / 4);
+            return oneSided(x, values, k, inward);
         }
-        values[k] = kept;
-        return slope;
+        double least = SEEN * Math.abs(formula.at(x, values));
+        double wide = difference(x, values, k, step);
+        while (Math.abs(wide) <= least && step < STEP && 100 * step <= room) {
+            step *= 100; // near zero a share of the parameter changes nothing that could be seen
+            wide = difference(x, values, k, step);
+        }
+        return (8 * difference(x, values, k, step / 2) - wide) / (6 * step);
     }
 
     /** f(p + h) − f(p − h). */

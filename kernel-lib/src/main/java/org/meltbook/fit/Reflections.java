@@ -9,14 +9,16 @@ final class Reflections {
      *
      * @param matrix element of row i and column j at {@code j * rows + i}
      * @param rows   at least as many as columns
+     * @param heads  filled with what {@link #turn} needs besides what is left below the triangle
      */
-    static void reduce(double[] matrix, int rows, int columns, double[] right) {
+    static void reduce(double[] matrix, int rows, int columns, double[] right, double[] heads) {
         for (int k = 0; k < columns; k++) {
             int base = k * rows;
             double square = 0;
             for (int i = k; i < rows; i++) {
                 square += matrix[base + i] * matrix[base + i];
             }
+            heads[k] = 0;
             if (square == 0) {
                 continue;
             }
@@ -29,6 +31,20 @@ final class Reflections {
             }
             turn(right, 0, matrix, base, k, rows, factor);
             matrix[base + k] = length;
+            heads[k] = head;
+        }
+    }
+
+    /** Turns one more right-hand side as a matrix was turned by {@link #reduce}. */
+    static void turn(double[] matrix, int rows, int columns, double[] right, double[] heads) {
+        for (int k = 0; k < columns; k++) {
+            if (heads[k] != 0) {
+                int pivot = k * rows + k;
+                double length = matrix[pivot];
+                matrix[pivot] = heads[k];
+                turn(right, 0, matrix, k * rows, k, rows, 1 / (length * heads[k]));
+                matrix[pivot] = length;
+            }
         }
     }
 

@@ -26,6 +26,13 @@ public final class Solver {
     /** Share of the sum of squares that the best step would still gain: a hundred-millionth of a standard error. */
     private static final double LEFT_TO_GAIN = 1e-18;
 
+    /** Along what share of a step the curve of the model is looked at. */
+    private static final double PROBE = 0.1;
+    /** A step whose second-order part is longer than this share of it is too long. */
+    private static final double MOST_BEND = 0.375;
+    /** Share of the sum of squares to gain from which on a step is bent. */
+    private static final double WORTH_BENDING = 1e-4;
+
     private static final double ROUNDING = 0x1p-52;
     private static final double SMALL = 1e-14;
 
@@ -38,6 +45,7 @@ public final class Solver {
     private double[] residuals;
     private double[] trialResiduals;
     private final double[] jacobian;
+    private final double[] second;
     private double cost;
     private int evaluations;
 
@@ -51,6 +59,7 @@ public final class Solver {
         this.residuals = new double[workspace.points()];
         this.trialResiduals = new double[workspace.points()];
         this.jacobian = new double[workspace.points() * coordinates];
+        this.second = new double[workspace.points()];
         workspace.inward(problem.start().toArray(), here);
     }
 
@@ -110,6 +119,7 @@ public final class Solver {
         step.reset();
         double damping = FIRST_DAMPING;
         double growth = 2;
+        boolean bending = workspace.problem().loss().plain();
         if (!linearise()) {
             throw new RangeException(workspace.problem().name() + " has no finite value or derivative at the start "
                     + "of the fit, " + workspace.problem().start());
@@ -121,6 +131,11 @@ public final class Solver {
                 return Fit.Status.CONVERGED;
             }
             double predicted = step.solve(here, held, damping);
+            if (bending && predicted > WORTH_BENDING * cost && !bend(damping)) {
+                damping *= growth;
+                growth *= 2;
+                continue;
+            }
             double change = 0;
             for (int j = 0; j < coordinates; j++) {
                 there[j] = here[j] + step.at(j);
@@ -137,8 +152,10 @@ public final class Solver {
                 }
                 damping *= growth;
                 growth *= 2;
+                bending = workspace.problem().loss().plain();
                 continue;
             }
+            bending = workspace.problem().loss().plain() && Math.abs(gained / predicted - 1) > 0.1;
             double quality = 2 * gained / predicted - 1;
             damping = Math.max(LEAST_DAMPING, damping * Math.max(1.0 / 3, 1 - quality * quality * quality));
             growth = 2;
@@ -153,6 +170,26 @@ public final class Solver {
             }
         }
         return Fit.Status.EVALUATIONS_SPENT;
+    }
+
+    /**
+     * Bends the step along the curve of the model, found from one more trial part of the way.
+     *
+     * @return false if the model bends so much that the step should be shorter
+     */
+    private boolean bend(double damping) {
+        evaluations++;
+        for (int j = 0; j < coordinates; j++) {
+            there[j] = here[j] + PROBE * step.at(j);
+        }
+        if (!workspace.residuals(there, trialResiduals)) {
+            return false;
+        }
+        step.change(jacobian, second);
+        for (int i = 0; i < second.length; i++) {
+            second[i] = 2 / PROBE * ((trialResiduals[i] - residuals[i]) / PROBE - second[i]);
+        }
+        return step.bend(here, damping, second) <= MOST_BEND;
     }
 
     private boolean linearise() {
