@@ -7,12 +7,16 @@ import java.util.Arrays;
  * triangle R and the turned residuals q; each damping then costs only a small problem. Without allocation.
  */
 final class DampedStep {
+    /** Share of its damping scale that a coordinate keeps from one linearisation to the next if its column shrinks. */
+    private static final double KEPT = 0.5;
+
     private final Workspace workspace;
     private final int rows;
     private final int n;
     private final double[] lowest;
     private final double[] highest;
-    private final double[] scales;
+    private final double[] lengths; // of the columns
+    private final double[] scales; // of the damping
     private final double[] matrix; // the Jacobian, column by column, overwritten by its decomposition
     private final double[] right;
     private final double[] heads;
@@ -25,6 +29,7 @@ final class DampedStep {
     private final double[] step;
     private final double[] straight; // the step before it was bent
     private final boolean[] fixed;
+    private final boolean[] linear; // undamped
     private final int[] active;
 
     DampedStep(Workspace workspace) {
@@ -37,6 +42,7 @@ final class DampedStep {
             lowest[j] = workspace.lowest(j);
             highest[j] = workspace.highest(j);
         }
+        this.lengths = new double[n];
         this.scales = new double[n];
         this.matrix = new double[rows * n];
         this.right = new double[rows];
@@ -50,6 +56,10 @@ final class DampedStep {
         this.straight = new double[n];
         this.step = new double[n];
         this.fixed = new boolean[n];
+        this.linear = new boolean[n];
+        for (int j : workspace.linear()) {
+            linear[j] = true;
+        }
         this.active = new int[n];
     }
 
@@ -73,7 +83,8 @@ final class DampedStep {
                 square += matrix[i] * matrix[i];
                 product += matrix[i] * right[i - j * rows];
             }
-            scales[j] = Math.max(0.5 * scales[j], Math.sqrt(square));
+            lengths[j] = Math.sqrt(square);
+            scales[j] = Math.max(KEPT * scales[j], lengths[j]);
             slope[j] = product;
         }
         Reflections.reduce(matrix, rows, n, right, heads);
@@ -102,6 +113,15 @@ final class DampedStep {
         return step[j];
     }
 
+    /** Largest change of a coordinate as a share of it. */
+    double longest(double[] here) {
+        double most = 0;
+        for (int j = 0; j < n; j++) {
+            most = Math.max(most, Math.abs(step[j]) / (Math.abs(here[j]) + Double.MIN_NORMAL));
+        }
+        return most;
+    }
+
     /**
      * Works out the step.
      *
@@ -113,7 +133,7 @@ final class DampedStep {
             fixed[j] = held[j]
                     || here[j] <= lowest[j] && slope[j] >= 0
                     || here[j] >= highest[j] && slope[j] <= 0
-                    || scales[j] == 0;
+                    || lengths[j] == 0;
         }
         boolean inside = false;
         while (!inside) {
@@ -150,22 +170,22 @@ final class DampedStep {
         for (int c = 0; c < m; c++) {
             int j = active[c];
             for (int k = 0; k < n; k++) {
-                small[c * height + k] = triangle[j * n + k] / scales[j];
+                small[c * height + k] = triangle[j * n + k] / lengths[j];
             }
             if (root > 0) {
                 Arrays.fill(small, c * height + n, (c + 1) * height, 0);
-                small[c * height + n + c] = root;
+                small[c * height + n + c] = linear[j] ? 0 : root * scales[j] / lengths[j];
             }
         }
         Reflections.reduce(small, height, m, smallRight, smallHeads);
         for (int c = m - 1; c >= 0; c--) {
             double sum = smallRight[c];
             for (int d = c + 1; d < m; d++) {
-                sum -= small[d * height + c] * step[active[d]] * scales[active[d]];
+                sum -= small[d * height + c] * step[active[d]] * lengths[active[d]];
             }
             double pivot = small[c * height + c];
             // a combination that the data do not fix at all stays where it is
-            step[active[c]] = Math.abs(pivot) > 1e-15 ? sum / pivot / scales[active[c]] : 0;
+            step[active[c]] = Math.abs(pivot) > 1e-15 ? sum / pivot / lengths[active[c]] : 0;
         }
     }
 
@@ -187,16 +207,16 @@ final class DampedStep {
         double length = 0;
         boolean inside = true;
         for (int j = 0; j < n; j++) {
-            double scaled = step[j] * scales[j];
-            bend += scaled * scaled;
-            length += straight[j] * straight[j] * scales[j] * scales[j];
+            double scale = linear[j] ? 0 : scales[j]; // linear ones are put in place afterwards
+            bend += step[j] * step[j] * scale * scale;
+            length += straight[j] * straight[j] * scale * scale;
             double end = here[j] + straight[j] + step[j];
             inside &= fixed[j] || end >= lowest[j] && end <= highest[j];
         }
         for (int j = 0; j < n; j++) {
             step[j] = straight[j] + (inside ? step[j] : 0);
         }
-        return Math.sqrt(bend / length);
+        return length > 0 ? Math.sqrt(bend / length) : 0;
     }
 
     /** Jacobian times step, added to nothing: how the residuals change along it to first order. */

@@ -20,7 +20,7 @@ import org.meltbook.base.RangeException;
  * <p>One thread at a time. Coordinates are those of {@link Workspace}.
  */
 public final class Solver {
-    private static final int MOST_EVALUATIONS = 2000;
+    private static final int MOST_EVALUATIONS = 20_000;
     private static final double FIRST_DAMPING = 1e-3;
     private static final double LEAST_DAMPING = 1e-16;
     /** Share of the sum of squares that the best step would still gain: a hundred-millionth of a standard error. */
@@ -34,10 +34,14 @@ public final class Solver {
     private static final double WORTH_BENDING = 1e-4;
 
     private static final double ROUNDING = 0x1p-52;
+    /** A step that changes no coordinate by more than this share of it cannot be told from none. */
     private static final double SMALL = 1e-14;
+    /** If the best step changes no coordinate by more, and yet lowers nothing, the optimum is reached within rounding. */
+    private static final double SETTLED = 1e-10;
 
     private final Workspace workspace;
     private final DampedStep step;
+    private final Projection projection;
     private final int coordinates;
     private final boolean[] held;
     private double[] here;
@@ -53,6 +57,7 @@ public final class Solver {
         this.workspace = Workspace.of(problem);
         this.coordinates = workspace.coordinates();
         this.step = new DampedStep(workspace);
+        this.projection = new Projection(workspace);
         this.held = new boolean[coordinates];
         this.here = new double[coordinates];
         this.there = new double[coordinates];
@@ -120,6 +125,7 @@ public final class Solver {
         double damping = FIRST_DAMPING;
         double growth = 2;
         boolean bending = workspace.problem().loss().plain();
+        project(here);
         if (!linearise()) {
             throw new RangeException(workspace.problem().name() + " has no finite value or derivative at the start "
                     + "of the fit, " + workspace.problem().start());
@@ -127,27 +133,27 @@ public final class Solver {
         while (evaluations < MOST_EVALUATIONS) {
             progress.at(evaluations, 0, "fit");
             double leftToGain = step.solve(here, held, 0);
-            if (leftToGain <= LEFT_TO_GAIN * cost) {
+            if (Math.abs(leftToGain) <= LEFT_TO_GAIN * cost) {
                 return Fit.Status.CONVERGED;
             }
+            boolean settled = step.longest(here) <= SETTLED;
             double predicted = step.solve(here, held, damping);
             if (bending && predicted > WORTH_BENDING * cost && !bend(damping)) {
                 damping *= growth;
                 growth *= 2;
                 continue;
             }
-            double change = 0;
             for (int j = 0; j < coordinates; j++) {
                 there[j] = here[j] + step.at(j);
-                change = Math.max(change, Math.abs(step.at(j)) / (Math.abs(here[j]) + SMALL));
             }
+            project(there);
             double trial = trial();
             double gained = cost - trial;
             if (!(gained > 0)) {
-                if (predicted <= noise()) {
+                if (settled || predicted <= noise()) {
                     return Fit.Status.CONVERGED; // what is left to gain is below rounding
                 }
-                if (change <= SMALL) {
+                if (step.longest(here) <= SMALL) {
                     return Fit.Status.STALLED;
                 }
                 damping *= growth;
@@ -200,6 +206,13 @@ public final class Solver {
             step.take(residuals, jacobian);
         }
         return usable;
+    }
+
+    private void project(double[] coordinates) {
+        if (projection.places().length > 0) {
+            evaluations++;
+            projection.apply(coordinates, held);
+        }
     }
 
     private double trial() {

@@ -1,7 +1,9 @@
 package org.meltbook.fit;
 
+import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
+import java.util.stream.IntStream;
 
 /**
  * Residuals of a problem and their derivatives, worked out without allocation, for data that may be exchanged.
@@ -35,7 +37,7 @@ public final class Workspace {
         this.parameters = problem.parameters().toArray(new Parameter[0]);
         this.values = problem.start().toArray();
         this.coordinate = new int[parameters.length];
-        java.util.Arrays.fill(coordinate, -1);
+        Arrays.fill(coordinate, -1);
         for (int j = 0; j < free.length; j++) {
             coordinate[free[j]] = j;
         }
@@ -52,7 +54,7 @@ public final class Workspace {
         }
         this.counts = new double[points];
         this.divisors = new double[points];
-        java.util.Arrays.fill(counts, 1);
+        Arrays.fill(counts, 1);
         divide();
     }
 
@@ -175,7 +177,7 @@ public final class Workspace {
         if (!tiesWithinBounds()) {
             return false;
         }
-        java.util.Arrays.fill(jacobian, 0, points * free.length, 0);
+        Arrays.fill(jacobian, 0, points * free.length, 0);
         for (Part part : parts) {
             part.take(values);
             part.set.model().curve(part.x, part.own, part.value, part.derivative);
@@ -246,6 +248,36 @@ public final class Workspace {
             }
         }
         return tangent;
+    }
+
+    /**
+     * Coordinates of the parameters in which all residuals are linear; none with a robust loss, since what is minimised
+     * is no sum of squares then.
+     */
+    int[] linear() {
+        if (!problem.loss().plain()) {
+            return new int[0];
+        }
+        return IntStream.range(0, free.length).filter(this::linear).toArray();
+    }
+
+    private boolean linear(int j) {
+        String name = parameters[free[j]].name();
+        for (Part part : parts) {
+            boolean there = part.set.model().parameters().stream().anyMatch(p -> p.name().equals(name));
+            boolean linear = part.set.model().linearIn().contains(name)
+                    && part.set.weighting() != Weighting.LOGARITHMIC;
+            if (there && !linear) {
+                return false;
+            }
+        }
+        return problem.ties().stream().noneMatch(tie -> tie.sources().contains(name));
+    }
+
+    /** The coordinate after its value changed by {@code step} to first order; NaN if it has none then. */
+    double movedBy(int j, double coordinate, double step) {
+        Parameter parameter = parameters[free[j]];
+        return parameter.scale() == Parameter.Scale.LOG ? coordinate + Math.log1p(step) : coordinate + step;
     }
 
     /** Root of the summed squares of (measured / deviation): what residuals are small against. */
