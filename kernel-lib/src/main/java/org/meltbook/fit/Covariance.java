@@ -18,14 +18,16 @@ final class Covariance {
 
     private final Problem problem;
     private final int[] free;
+    private final double[][] tangent;
     private final boolean[] bound;
     private final boolean[] loose;
     private final double[][] matrix;
     private final List<String> problems = new ArrayList<>();
 
-    private Covariance(Problem problem) {
-        int count = problem.model().parameters().size();
+    private Covariance(Problem problem, double[][] tangent) {
+        int count = problem.parameters().size();
         this.problem = problem;
+        this.tangent = tangent;
         this.free = problem.free();
         this.bound = new boolean[count];
         this.loose = new boolean[count];
@@ -35,14 +37,20 @@ final class Covariance {
         }
     }
 
-    /** The covariance at the given values for unit residual variance. */
-    static Covariance of(Problem problem, double[] values) {
-        Covariance covariance = new Covariance(problem);
-        covariance.fill(values);
+    /**
+     * The covariance at the given values for unit residual variance.
+     *
+     * @param values   one a parameter
+     * @param jacobian derivatives of the residuals to the coordinates, one row a point
+     * @param tangent  derivatives of all values to the coordinates, one row a parameter
+     */
+    static Covariance of(Problem problem, double[] values, double[][] jacobian, double[][] tangent) {
+        Covariance covariance = new Covariance(problem, tangent);
+        covariance.fill(values, jacobian);
         return covariance;
     }
 
-    /** Covariance of two parameters on the inner scale for unit residual variance; NaN if there is none. */
+    /** Covariance of two parameters on their own scales for unit residual variance; NaN if there is none. */
     double at(int first, int second) {
         return matrix[first][second];
     }
@@ -69,9 +77,8 @@ final class Covariance {
         return List.copyOf(problems);
     }
 
-    private void fill(double[] values) {
-        List<Parameter> parameters = problem.model().parameters();
-        double[][] jacobian = Residuals.jacobian(problem, values);
+    private void fill(double[] values, double[][] jacobian) {
+        List<Parameter> parameters = problem.parameters();
         List<int[]> used = new ArrayList<>(); // place among all, column of the Jacobian
         for (int j = 0; j < free.length; j++) {
             Parameter parameter = parameters.get(free[j]);
@@ -89,6 +96,37 @@ final class Covariance {
         if (!used.isEmpty()) {
             decompose(jacobian, used);
         }
+        for (int p = 0; p < matrix.length; p++) {
+            if (problem.tie(p).isPresent()) {
+                follow(p, values);
+            }
+        }
+    }
+
+    /** Fills in the row and column of a parameter that follows from others. */
+    private void follow(int p, double[] values) {
+        double[] share = new double[free.length];
+        for (int j = 0; j < free.length; j++) {
+            share[j] = bound[free[j]]
+                    ? 0
+                    : tangent[p][j] / problem.parameters().get(p).stretch(values[p]);
+            loose[p] |= loose[free[j]] && share[j] != 0;
+        }
+        for (int other = 0; other < matrix.length; other++) {
+            if (other != p && (problem.parameters().get(other).isFree())) {
+                matrix[p][other] = combined(share, other);
+                matrix[other][p] = matrix[p][other];
+            }
+        }
+        matrix[p][p] = combined(share, p);
+    }
+
+    private double combined(double[] share, int other) {
+        double sum = 0;
+        for (int j = 0; j < free.length; j++) {
+            sum += share[j] == 0 ? 0 : share[j] * matrix[free[j]][other];
+        }
+        return sum;
     }
 
     private void decompose(double[][] jacobian, List<int[]> used) {
@@ -129,7 +167,7 @@ final class Covariance {
         for (int c = 0; c < used.size(); c++) {
             if (Math.abs(v[c][k]) > PART) {
                 loose[used.get(c)[0]] = true;
-                names.add(problem.model().parameters().get(used.get(c)[0]).label());
+                names.add(problem.parameters().get(used.get(c)[0]).label());
             }
         }
         problems.add("the data do not tell " + String.join(" from ", names)

@@ -19,6 +19,8 @@ public record Estimate(Parameter parameter, double value, double error, double l
         ESTIMATED("estimated"),
         /** Estimated, but its 95 % interval spans more than a factor of 100. */
         WEAK("weakly determined"),
+        /** Follows from other parameters by a rule that was given. */
+        TIED("follows from others"),
         /** Held at the value given. */
         HELD("held, not fitted"),
         /** Stopped by a bound: the data would rather have it beyond. */

@@ -1,22 +1,26 @@
 package org.meltbook.fit;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
+import org.apache.commons.math3.distribution.NormalDistribution;
 import org.apache.commons.math3.distribution.TDistribution;
+import org.apache.commons.math3.linear.Array2DRowRealMatrix;
+import org.apache.commons.math3.linear.RealMatrix;
 import org.meltbook.base.Doubles;
-import org.meltbook.base.NumberText;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
-import org.meltbook.figure.Axis;
 import org.meltbook.figure.Exhibit;
 import org.meltbook.figure.Figure;
 
 /**
  * What came of a fit: estimates with standard errors and 95 % intervals, covariance, residuals, and how it ended.
  *
- * <p>Standard errors come from the Jacobian at the optimum, scaled by the residual variance: the scatter of the points
- * around the model tells their error, so a model that does not fit widens its own errors. Intervals use Student's t;
- * for a parameter on a logarithmic scale they are symmetric in its logarithm, so that it stays above zero.
+ * <p>Standard errors come from the Jacobian at the optimum. With {@link ErrorModel#SCALED} they are scaled by the
+ * residual variance: the scatter of the points around the model tells their error, so a model that does not fit widens
+ * its own errors; intervals use Student's t. With {@link ErrorModel#ABSOLUTE} the deviations given are taken as they
+ * are, and intervals use the normal distribution. For a parameter on a logarithmic scale intervals are symmetric in its
+ * logarithm, so that it stays above zero.
  */
 public final class Fit implements Exhibit {
     /** How a fit ended. */
@@ -24,45 +28,70 @@ public final class Fit implements Exhibit {
         /** No step lowers the sum of squares any more. */
         CONVERGED,
         /** The limit of model evaluations came first: the values are the best so far, not the optimum. */
-        EVALUATIONS_SPENT
+        EVALUATIONS_SPENT,
+        /** No step could be found that lowers the sum of squares, though its slope is not zero. */
+        STALLED
     }
 
-    private static final int LINE_POINTS = 121;
-
     private final Problem problem;
+    private final Doubles coordinates;
     private final Doubles values;
     private final Status status;
     private final int evaluations;
     private final Doubles residuals;
+    private final double[][] jacobian;
+    private final double[][] tangent;
+    private final double cost;
     private final double sumOfSquares;
     private final int degreesOfFreedom;
     private final Covariance covariance;
     private final List<Estimate> estimates;
 
-    private Fit(Problem problem, double[] values, Status status, int evaluations) {
+    private Fit(Problem problem, double[] coordinates, Status status, int evaluations) {
         this.problem = problem;
-        this.values = Doubles.of(values);
+        this.coordinates = Doubles.of(coordinates);
         this.status = status;
         this.evaluations = evaluations;
-        this.residuals = Doubles.of(Residuals.of(problem, values));
+        Workspace workspace = Workspace.of(problem);
+        int points = workspace.points();
+        double[] misfits = new double[points];
+        double[] slopes = new double[points * coordinates.length];
+        double[] all = new double[problem.parameters().size()];
+        workspace.linearise(coordinates, misfits, slopes);
+        workspace.outward(coordinates, all);
+        this.values = Doubles.of(all);
+        this.residuals = Doubles.of(misfits);
+        this.jacobian = rowByRow(slopes, points, coordinates.length);
+        this.tangent = workspace.tangent(coordinates);
+        this.cost = workspace.cost(misfits);
         this.sumOfSquares = residuals.stream().map(r -> r * r).sum();
-        this.covariance = Covariance.of(problem, values);
-        this.degreesOfFreedom = residuals.size() - covariance.estimated();
-        this.estimates = estimates(values);
+        this.covariance = Covariance.of(problem, all, jacobian, tangent);
+        this.degreesOfFreedom = points - covariance.estimated();
+        this.estimates = estimates(all);
     }
 
-    static Fit of(Problem problem, double[] values, Status status, int evaluations) {
-        return new Fit(problem, values, status, evaluations);
+    private static double[][] rowByRow(double[] columns, int rows, int count) {
+        double[][] matrix = new double[rows][count];
+        for (int i = 0; i < rows; i++) {
+            for (int j = 0; j < count; j++) {
+                matrix[i][j] = columns[j * rows + i];
+            }
+        }
+        return matrix;
+    }
+
+    /** What a fit of the problem is that ended at the coordinates. */
+    static Fit at(Problem problem, double[] coordinates, Status status, int evaluations) {
+        return new Fit(problem, coordinates, status, evaluations);
     }
 
     private List<Estimate> estimates(double[] at) {
         List<Estimate> all = new ArrayList<>();
-        double t = degreesOfFreedom > 0
-                ? new TDistribution(degreesOfFreedom).inverseCumulativeProbability(0.975)
-                : Double.NaN;
+        double t = quantile();
+        double variance = variance();
         for (int i = 0; i < at.length; i++) {
-            Parameter parameter = problem.model().parameters().get(i);
-            double inner = Math.sqrt(covariance.at(i, i) * reducedChiSquare());
+            Parameter parameter = problem.parameters().get(i);
+            double inner = Math.sqrt(covariance.at(i, i) * variance);
             double centre = parameter.inward(at[i]);
             double low = parameter.outward(centre - t * inner);
             double high = parameter.outward(centre + t * inner);
@@ -71,9 +100,20 @@ public final class Fit implements Exhibit {
         return List.copyOf(all);
     }
 
+    private double quantile() {
+        if (problem.errors() == ErrorModel.ABSOLUTE) {
+            return new NormalDistribution().inverseCumulativeProbability(0.975);
+        }
+        return degreesOfFreedom > 0
+                ? new TDistribution(degreesOfFreedom).inverseCumulativeProbability(0.975)
+                : Double.NaN;
+    }
+
     private Estimate.Status status(int i, double halfWidth) {
-        Parameter parameter = problem.model().parameters().get(i);
-        if (!parameter.isFree()) {
+        Parameter parameter = problem.parameters().get(i);
+        if (problem.tie(i).isPresent()) {
+            return covariance.notIdentified(i) ? Estimate.Status.NOT_IDENTIFIED : Estimate.Status.TIED;
+        } else if (!parameter.isFree()) {
             return Estimate.Status.HELD;
         } else if (covariance.atBound(i)) {
             return Estimate.Status.AT_BOUND;
@@ -89,12 +129,17 @@ public final class Fit implements Exhibit {
         return problem;
     }
 
-    /** The parameters' values in the order of the model. */
+    /** The parameters' values in the order of {@link Problem#parameters()}. */
     public Doubles values() {
         return values;
     }
 
-    /** What the fit says of each parameter, in the order of the model. */
+    /** The fitted coordinates of {@link Workspace}: the free parameters, each on its own scale. */
+    public Doubles coordinates() {
+        return coordinates;
+    }
+
+    /** What the fit says of each parameter, in the order of {@link Problem#parameters()}. */
     public List<Estimate> estimates() {
         return estimates;
     }
@@ -102,10 +147,10 @@ public final class Fit implements Exhibit {
     /**
      * What the fit says of one parameter.
      *
-     * @throws RangeException if the model has none of that name; the message lists them
+     * @throws RangeException if there is none of that name; the message lists them
      */
     public Estimate estimate(String name) {
-        return estimates.get(place(name));
+        return estimates.get(problem.place(name));
     }
 
     /** Standard error of a parameter, in its unit; NaN if the data give none. */
@@ -115,42 +160,110 @@ public final class Fit implements Exhibit {
 
     /** Covariance of two parameters, in the product of their units; NaN if the data give none. */
     public double covariance(String first, String second) {
-        int a = place(first);
-        int b = place(second);
-        List<Parameter> parameters = problem.model().parameters();
+        int a = problem.place(first);
+        int b = problem.place(second);
+        List<Parameter> parameters = problem.parameters();
         return covariance.at(a, b)
-                * reducedChiSquare()
+                * variance()
                 * parameters.get(a).stretch(values.at(a))
                 * parameters.get(b).stretch(values.at(b));
     }
 
+    /**
+     * Covariance of the coordinates, one row and column a free parameter in the order of {@link Problem#free()}; NaN in
+     * the rows of those that the data do not give or that rest on a bound.
+     */
+    public RealMatrix covariance() {
+        int[] free = problem.free();
+        double[][] matrix = new double[free.length][free.length];
+        for (int a = 0; a < free.length; a++) {
+            for (int b = 0; b < free.length; b++) {
+                matrix[a][b] = covariance.at(free[a], free[b]) * variance();
+            }
+        }
+        return new Array2DRowRealMatrix(matrix, false);
+    }
+
     /** Correlation of two parameters on the scales on which they were stepped, −1 to 1; NaN if the data give none. */
     public double correlation(String first, String second) {
-        int a = place(first);
-        int b = place(second);
+        int a = problem.place(first);
+        int b = problem.place(second);
         return covariance.at(a, b) / Math.sqrt(covariance.at(a, a) * covariance.at(b, b));
     }
 
-    private int place(String name) {
-        List<String> names =
-                problem.model().parameters().stream().map(Parameter::name).toList();
-        if (!names.contains(name)) {
-            throw new RangeException(problem.model().name() + " has no parameter " + name + "; it has " + names);
+    /** Derivatives of the residuals to the coordinates, one row a point, one column a free parameter on its scale. */
+    public RealMatrix scaledJacobian() {
+        return new Array2DRowRealMatrix(jacobian, true);
+    }
+
+    /** Derivatives of the residuals to the values of the free parameters, one row a point, in 1 over their units. */
+    public RealMatrix jacobian() {
+        int[] free = problem.free();
+        RealMatrix plain = scaledJacobian();
+        for (int j = 0; j < free.length; j++) {
+            double stretch = problem.parameters().get(free[j]).stretch(values.at(free[j]));
+            plain.setColumnVector(j, plain.getColumnVector(j).mapDivide(stretch));
         }
-        return names.indexOf(name);
+        return plain;
     }
 
-    /** The fitted model at {@code x}. */
+    /**
+     * Derivatives of the values of all parameters to the coordinates, one row a parameter, one column a free parameter;
+     * rows of held parameters are zero.
+     */
+    public RealMatrix tangent() {
+        return new Array2DRowRealMatrix(tangent, true);
+    }
+
+    /** The fitted model of the only data set at {@code x}. */
     public double at(double x) {
-        return problem.model().at(x, values.toArray());
+        problem.only();
+        return at(0, x);
     }
 
-    /** (model − measured) / deviation of each point; a share of the measured value for relative errors. */
+    /** The fitted model of a data set, counted from zero, at {@code x}. */
+    public double at(int dataSet, double x) {
+        return problem.dataSets().get(dataSet).model().at(x, ownValues(dataSet));
+    }
+
+    /** The fitted values of the parameters of one data set's model, in the model's order. */
+    public double[] ownValues(int dataSet) {
+        return problem.dataSets().get(dataSet).model().parameters().stream()
+                .mapToDouble(parameter -> values.at(problem.place(parameter.name())))
+                .toArray();
+    }
+
+    /** The fitted model at the points of a data set, counted from zero. */
+    public Doubles predictions(int dataSet) {
+        double[] own = ownValues(dataSet);
+        DataSet set = problem.dataSets().get(dataSet);
+        double[] into = new double[set.size()];
+        set.model().values(set.x().toArray(), own, into);
+        return Doubles.of(into);
+    }
+
+    /**
+     * (model − measured) / deviation of each point, the data sets one behind the other; a share of the measured value
+     * for relative errors of unknown size, ln(model / measured) for errors of the logarithm.
+     */
     public Doubles residuals() {
         return residuals;
     }
 
-    /** Sum of the squared residuals. */
+    /** The residuals of one data set, counted from zero. */
+    public Doubles residuals(int dataSet) {
+        int from = problem.offset(dataSet);
+        double[] all = residuals.toArray();
+        return Doubles.of(Arrays.copyOfRange(
+                all, from, from + problem.dataSets().get(dataSet).size()));
+    }
+
+    /** What was minimised: the sum of the squared residuals, or of what the loss makes of them. */
+    public double cost() {
+        return cost;
+    }
+
+    /** Sum of the squared residuals; chi-square if the deviations are taken as absolute. */
     public double sumOfSquares() {
         return sumOfSquares;
     }
@@ -165,6 +278,26 @@ public final class Fit implements Exhibit {
         return degreesOfFreedom > 0 ? sumOfSquares / degreesOfFreedom : Double.NaN;
     }
 
+    /**
+     * By what the inverse of JᵀJ is multiplied to give the covariance: 1 for absolute deviations, the residual variance
+     * for scaled ones; with a robust loss, what P. J. Huber, Robust Statistics (1981), eq. 7.6.5 puts in its place (memory).
+     */
+    public double variance() {
+        if (problem.errors() == ErrorModel.ABSOLUTE) {
+            return 1;
+        }
+        Loss loss = problem.loss();
+        if (loss.plain() || degreesOfFreedom <= 0) {
+            return reducedChiSquare();
+        }
+        int n = residuals.size();
+        double pull = residuals.stream().map(r -> r * loss.weight(r)).map(p -> p * p).sum();
+        double mean = residuals.stream().map(loss::curvature).sum() / n;
+        double square = residuals.stream().map(loss::curvature).map(c -> c * c).sum() / n;
+        double correction = 1 + covariance.estimated() * (square / (mean * mean) - 1) / n;
+        return correction * correction * pull / degreesOfFreedom / (mean * mean);
+    }
+
     /** Root mean square of the residuals. */
     public double rootMeanSquare() {
         return Math.sqrt(sumOfSquares / residuals.size());
@@ -175,137 +308,39 @@ public final class Fit implements Exhibit {
         return status;
     }
 
-    /** How often the model was tried. */
+    /** How often the models were tried. */
     public int evaluations() {
         return evaluations;
     }
 
-    @Override
-    public String headline() {
-        return problem.model().name() + " fitted to " + residuals.size() + " points: " + spread() + ", "
-                + (status == Status.CONVERGED ? "converged" : "NOT converged") + " after " + evaluations + " trials.";
+    /** What the data do not fix, and which bounds were hit, in words. */
+    List<String> identification() {
+        return covariance.problems();
     }
 
     /** How far the points lie from the model, in words. */
     public String spread() {
-        return problem.weighting() == Weighting.RELATIVE
-                ? "points lie " + NumberText.of(100 * rootMeanSquare(), 2) + " % (root mean square) from the model"
-                : "root mean square residual " + NumberText.of(rootMeanSquare(), 3);
+        return new FitExhibit(this).spread();
+    }
+
+    @Override
+    public String headline() {
+        return new FitExhibit(this).headline();
     }
 
     @Override
     public List<Rows> rows() {
-        return List.of(parameterRows(), residualRows());
-    }
-
-    private Rows parameterRows() {
-        return Rows.titled("Parameters of " + problem.model().name())
-                .text(
-                        "parameter",
-                        estimates.stream().map(e -> e.parameter().label()).toList())
-                .text(
-                        "value ± standard error",
-                        estimates.stream().map(Fit::number).toList())
-                .text("95 % interval", estimates.stream().map(Fit::interval).toList())
-                .text("unit", estimates.stream().map(e -> e.parameter().unit()).toList())
-                .text("status", estimates.stream().map(e -> e.status().words()).toList())
-                .note("Error model: " + problem.weighting().words() + ".")
-                .note("Intervals: Student's t with " + degreesOfFreedom + " degrees of freedom; residual variance "
-                        + NumberText.of(reducedChiSquare()) + ".")
-                .build();
-    }
-
-    private static String number(Estimate estimate) {
-        return estimate.status() == Estimate.Status.HELD
-                ? NumberText.of(estimate.value())
-                : NumberText.of(estimate.value(), estimate.error(), "");
-    }
-
-    private static String interval(Estimate estimate) {
-        return Double.isNaN(estimate.error())
-                ? "none"
-                : NumberText.of(estimate.low()) + " to " + NumberText.of(estimate.high());
-    }
-
-    private Rows residualRows() {
-        boolean relative = problem.weighting() == Weighting.RELATIVE;
-        return Rows.titled("Residuals of " + problem.model().name())
-                .numbers(problem.xAxis().label(), problem.xAxis().unit(), problem.x())
-                .numbers("measured", problem.yAxis().unit(), problem.y())
-                .numbers("model", problem.yAxis().unit(), problem.x().map(this::at))
-                .numbers(
-                        relative ? "model / measured − 1" : "residual / deviation",
-                        relative ? "%" : "1",
-                        shownResiduals())
-                .build();
-    }
-
-    private Doubles shownResiduals() {
-        return problem.weighting() == Weighting.RELATIVE ? residuals.map(r -> 100 * r) : residuals;
+        return new FitExhibit(this).rows();
     }
 
     @Override
     public List<Figure> figures() {
-        return List.of(modelFigure(), residualFigure());
-    }
-
-    private Figure modelFigure() {
-        Doubles line = line();
-        return Figure.titled(problem.model().name() + " and the points it was fitted to")
-                .x(problem.xAxis())
-                .y(problem.yAxis())
-                .line(problem.model().name(), line, line.map(this::at))
-                .marks("measured", problem.x(), problem.y())
-                .caption("The line ends where the measured points end.")
-                .build();
-    }
-
-    private Figure residualFigure() {
-        boolean relative = problem.weighting() == Weighting.RELATIVE;
-        Axis residual = relative
-                ? new Axis("model / measured − 1", "%", Axis.Scale.LINEAR)
-                : new Axis("residual / deviation", "1", Axis.Scale.LINEAR);
-        Doubles ends = Doubles.of(problem.x().smallest(), problem.x().largest());
-        return Figure.titled("Residuals of " + problem.model().name())
-                .x(problem.xAxis())
-                .y(residual)
-                .line("no misfit", ends, Doubles.of(0, 0))
-                .marks("residual", problem.x(), shownResiduals())
-                .build();
-    }
-
-    private Doubles line() {
-        double first = problem.x().smallest();
-        double last = problem.x().largest();
-        if (first == last) {
-            return Doubles.of(first);
-        }
-        if (problem.xAxis().scale() == Axis.Scale.LOG && first > 0) {
-            return Doubles.logSpaced(first, last, LINE_POINTS);
-        }
-        double[] line = new double[LINE_POINTS];
-        for (int i = 0; i < line.length; i++) {
-            line[i] = first + (last - first) * i / (line.length - 1);
-        }
-        return Doubles.of(line);
+        return new FitExhibit(this).figures();
     }
 
     @Override
     public List<String> cautions() {
-        List<String> all = new ArrayList<>();
-        if (status != Status.CONVERGED) {
-            all.add("the fit stopped after " + evaluations
-                    + " trials without converging: its values are the best so far");
-        }
-        all.addAll(covariance.problems());
-        estimates.stream()
-                .filter(e -> e.status() == Estimate.Status.WEAK)
-                .forEach(e -> all.add(e.parameter().label()
-                        + " is weakly determined: its 95 % interval spans more than " + "a factor of 100"));
-        if (degreesOfFreedom <= 0) {
-            all.add("as many parameters as points: nothing is left to judge the errors by");
-        }
-        return List.copyOf(all);
+        return new FitExhibit(this).cautions();
     }
 
     @Override

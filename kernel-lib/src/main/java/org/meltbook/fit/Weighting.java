@@ -1,13 +1,15 @@
 package org.meltbook.fit;
 
-/** How far a point may lie from the model: the error model of a fit. */
+/** How far a point may lie from the model: by what its misfit is divided. */
 public enum Weighting {
     /** Every point has the same absolute error. */
     EQUAL("equal absolute errors"),
     /** Every point has the same relative error: the misfit is divided by the measured value. */
     RELATIVE("equal relative errors"),
-    /** Each point has its own standard deviation, known up to a common factor. */
-    DEVIATIONS("given standard deviations, known up to a common factor");
+    /** Every point has the same error of its logarithm: the misfit is ln(model / measured). */
+    LOGARITHMIC("equal errors of the logarithm"),
+    /** Each point has its own standard deviation. */
+    DEVIATIONS("given standard deviations");
 
     private final String words;
 
@@ -15,8 +17,8 @@ public enum Weighting {
         this.words = words;
     }
 
-    /** The error model in words, with how it enters the standard errors. */
+    /** The weighting in words. */
     public String words() {
-        return words + "; standard errors are scaled by the residual variance";
+        return words;
     }
 }

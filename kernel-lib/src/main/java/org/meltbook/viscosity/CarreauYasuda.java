@@ -32,6 +32,7 @@ public record CarreauYasuda(double eta0, double lambda, double a, double n, doub
                     .on(Scale.LINEAR)
                     .heldAt(0))
             .made(v -> new CarreauYasuda(v.at(0), v.at(1), v.at(2), v.at(3), v.at(4)))
+            .curve(CarreauYasuda::curve)
             .startingFrom(shape -> Doubles.of(shape.lowEnd().mean(), shape.bendTime(), 1, 1 + shape.thinning(), 0))
             .build();
 
@@ -86,6 +87,36 @@ public record CarreauYasuda(double eta0, double lambda, double a, double n, doub
         into[2] = span * (n - 1) / a * (thinned * log - bracket / a);
         into[3] = span * bracket / a;
         into[4] = 1 - share;
+    }
+
+    /** The numbers of {@link #at} and {@link #gradient} from one logarithm and two exponentials a rate. */
+    private static void curve(double[] rates, double[] constants, double[] viscosities, double[] derivatives) {
+        double eta0 = constants[0];
+        double lambda = constants[1];
+        double a = constants[2];
+        double n = constants[3];
+        double etaInf = constants[4];
+        double power = (n - 1) / a;
+        int count = rates.length;
+        for (int i = 0; i < count; i++) {
+            double log = Math.log(lambda * rates[i]);
+            double z = a * log;
+            double small = Math.exp(-Math.abs(z));
+            double sum = 1 + small;
+            double bracket = sum == 1 ? small : Math.log(sum) * (small / (sum - 1)); // ln(1 + small), all digits
+            bracket += Math.max(z, 0);
+            double share = Math.exp(power * bracket);
+            viscosities[i] = etaInf + (eta0 - etaInf) * share;
+            if (derivatives.length > 0) {
+                double thinned = (z > 0 ? 1 : small) / sum;
+                double span = (eta0 - etaInf) * share;
+                derivatives[i] = share;
+                derivatives[count + i] = span * (n - 1) * thinned / lambda;
+                derivatives[2 * count + i] = span * power * (thinned * log - bracket / a);
+                derivatives[3 * count + i] = span * bracket / a;
+                derivatives[4 * count + i] = 1 - share;
+            }
+        }
     }
 
     @Override

@@ -3,6 +3,7 @@ package org.meltbook.viscosity;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
+import java.util.Optional;
 import java.util.function.Function;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.RangeException;
@@ -17,6 +18,20 @@ public final class LawFamily {
     private final List<Parameter> parameters;
     private final Function<Doubles, ViscosityLaw> maker;
     private final Function<CurveShape, Doubles> guess;
+    private final Curve curve;
+
+    /**
+     * Viscosities and their derivatives at many rates together, where that costs less than rate by rate. Constants are
+     * checked before.
+     */
+    @FunctionalInterface
+    interface Curve {
+        /**
+         * Fills in the viscosities and, unless {@code derivatives} is empty, the derivative to constant k at rate i, at
+         * {@code k * rates.length + i}.
+         */
+        void fill(double[] rates, double[] constants, double[] viscosities, double[] derivatives);
+    }
 
     private LawFamily(LawFamily pattern, List<Parameter> parameters) {
         this.name = pattern.name;
@@ -25,6 +40,7 @@ public final class LawFamily {
         this.parameters = List.copyOf(parameters);
         this.maker = pattern.maker;
         this.guess = pattern.guess;
+        this.curve = pattern.curve;
     }
 
     private LawFamily(Builder builder) {
@@ -34,6 +50,7 @@ public final class LawFamily {
         this.parameters = List.copyOf(builder.parameters);
         this.maker = builder.maker;
         this.guess = builder.guess;
+        this.curve = builder.curve.orElse(this::oneByOne);
     }
 
     /** A family to be described. */
@@ -114,12 +131,28 @@ public final class LawFamily {
         return new LawModel(this);
     }
 
+    private void oneByOne(double[] rates, double[] constants, double[] viscosities, double[] derivatives) {
+        ViscosityLaw law = of(Doubles.of(constants));
+        double[] gradient = new double[constants.length];
+        for (int i = 0; i < rates.length; i++) {
+            viscosities[i] = law.at(rates[i]);
+            if (derivatives.length > 0) {
+                law.gradient(rates[i], gradient);
+                for (int k = 0; k < gradient.length; k++) {
+                    derivatives[k * rates.length + i] = gradient[k];
+                }
+            }
+        }
+    }
+
     @Override
     public String toString() {
         return name + ": " + formula;
     }
 
     private record LawModel(LawFamily family) implements Model {
+        private static final double[] NONE = {};
+
         @Override
         public String name() {
             return family.name;
@@ -141,6 +174,21 @@ public final class LawFamily {
                 family.of(Doubles.of(values)).gradient(x, into);
             } else {
                 Arrays.fill(into, Double.NaN);
+            }
+        }
+
+        @Override
+        public void values(double[] x, double[] values, double[] into) {
+            curve(x, values, into, NONE);
+        }
+
+        @Override
+        public void curve(double[] x, double[] values, double[] into, double[] derivatives) {
+            if (usable(values)) {
+                family.curve.fill(x, values, into, derivatives);
+            } else {
+                Arrays.fill(into, Double.NaN);
+                Arrays.fill(derivatives, Double.NaN);
             }
         }
 
@@ -166,6 +214,7 @@ public final class LawFamily {
             throw new RangeException("this family cannot make a law");
         };
         private Function<CurveShape, Doubles> guess = shape -> Doubles.of();
+        private Optional<Curve> curve = Optional.empty();
 
         private Builder(String name) {
             this.name = name;
@@ -192,6 +241,12 @@ public final class LawFamily {
         /** Sets how a law is made from its constants, which come in the order of the parameters. */
         public Builder made(Function<Doubles, ViscosityLaw> by) {
             this.maker = by;
+            return this;
+        }
+
+        /** Sets how many rates are worked out together; one by one if it is not set. */
+        Builder curve(Curve together) {
+            this.curve = Optional.of(together);
             return this;
         }
 

@@ -130,7 +130,7 @@ public final class ViscosityFit implements Exhibit {
     }
 
     private CurveShape lowEnd() {
-        return CurveShape.of(fit.problem().x(), fit.problem().y()).lowEnd();
+        return CurveShape.of(fit.problem().only().x(), fit.problem().only().y()).lowEnd();
     }
 
     private Prediction limit(String name) {
@@ -234,14 +234,14 @@ public final class ViscosityFit implements Exhibit {
     }
 
     private Figure overlay() {
-        Doubles rates = fit.problem().x();
+        Doubles rates = fit.problem().only().x();
         Doubles line = Doubles.logSpaced(rates.smallest(), rates.largest(), LINE_POINTS);
         Figure.Builder figure = Figure.titled(capital(family.name()) + " and measured viscosity"
                         + curve.conditions().ofSample())
                 .x(Quantity.SHEAR_RATE)
                 .y(Quantity.VISCOSITY)
                 .line(family.name(), line, line.map(law::at))
-                .marks("measured", rates, fit.problem().y());
+                .marks("measured", rates, fit.problem().only().y());
         if (curve.viscosity().setAside() > 0) {
             int[] rows = IntStream.range(0, curve.viscosity().size())
                     .filter(row -> !curve.viscosity().verdicts().get(row).usable())

@@ -188,7 +188,7 @@ class FitTest {
 
     @Test
     void an_early_stop_is_a_status_and_a_caution() {
-        Fit fit = Fit.of(
+        Fit fit = Fit.at(
                 Problem.of(LINE).data(X, NOISY).from(0, 0), new double[] {1, 1}, Fit.Status.EVALUATIONS_SPENT, 2000);
         assertTrue(fit.headline().contains("NOT converged"));
         assertTrue(fit.cautions().get(0).contains("without converging"));

@@ -10,7 +10,7 @@ import org.meltbook.numeric.ReferenceTable;
  * {@code reference/strd} as published: data, two starts, and results certified to 11 digits.
  */
 record StatisticalReference(
-        Doubles x, Doubles y, List<Doubles> starts, Doubles values, Doubles errors, double sumOfSquares) {
+        Doubles x, Doubles secondX, Doubles y, List<Doubles> starts, Doubles values, Doubles errors, double sumOfSquares) {
     static StatisticalReference of(String name) {
         List<String> lines = ReferenceTable.lines("strd/" + name + ".dat");
         List<double[]> parameters = new ArrayList<>();
@@ -22,7 +22,7 @@ record StatisticalReference(
                 parameters.add(numbers(line.substring(line.indexOf('=') + 1)));
             } else if (line.startsWith("Residual Sum of Squares:")) {
                 sum = numbers(line.substring(line.indexOf(':') + 1))[0];
-            } else if (line.matches("Data:\\s+y\\s+x\\s*")) {
+            } else if (line.matches("Data:\\s+y\\s+x1?(\\s+x2)?\\s*")) {
                 data = true;
             } else if (data && !line.isBlank()) {
                 points.add(numbers(line));
@@ -30,6 +30,7 @@ record StatisticalReference(
         }
         return new StatisticalReference(
                 column(points, 1),
+                column(points, points.get(0).length - 1),
                 column(points, 0),
                 List.of(column(parameters, 0), column(parameters, 1)),
                 column(parameters, 2),

@@ -1,0 +1,61 @@
+package org.meltbook.fit;
+
+/** Householder's reduction of a matrix, held column by column in one array, to a triangle; in place. */
+final class Reflections {
+    private Reflections() {}
+
+    /**
+     * Turns the matrix into its upper triangle R and the right-hand side along with it; what stood below is left over.
+     *
+     * @param matrix element of row i and column j at {@code j * rows + i}
+     * @param rows   at least as many as columns
+     * @param heads  filled with what {@link #turn} needs besides what is left below the triangle
+     */
+    static void reduce(double[] matrix, int rows, int columns, double[] right, double[] heads) {
+        for (int k = 0; k < columns; k++) {
+            int base = k * rows;
+            double square = 0;
+            for (int i = k; i < rows; i++) {
+                square += matrix[base + i] * matrix[base + i];
+            }
+            heads[k] = 0;
+            if (square == 0) {
+                continue;
+            }
+            double length = matrix[base + k] > 0 ? -Math.sqrt(square) : Math.sqrt(square);
+            double head = matrix[base + k] - length;
+            double factor = 1 / (length * head); // −2 / |v|²
+            matrix[base + k] = head;
+            for (int j = k + 1; j < columns; j++) {
+                turn(matrix, j * rows, matrix, base, k, rows, factor);
+            }
+            turn(right, 0, matrix, base, k, rows, factor);
+            matrix[base + k] = length;
+            heads[k] = head;
+        }
+    }
+
+    /** Turns one more right-hand side as a matrix was turned by {@link #reduce}. */
+    static void turn(double[] matrix, int rows, int columns, double[] right, double[] heads) {
+        for (int k = 0; k < columns; k++) {
+            if (heads[k] != 0) {
+                int pivot = k * rows + k;
+                double length = matrix[pivot];
+                matrix[pivot] = heads[k];
+                turn(right, 0, matrix, k * rows, k, rows, 1 / (length * heads[k]));
+                matrix[pivot] = length;
+            }
+        }
+    }
+
+    private static void turn(double[] column, int at, double[] axis, int base, int from, int to, double factor) {
+        double product = 0;
+        for (int i = from; i < to; i++) {
+            product += axis[base + i] * column[at + i];
+        }
+        product *= factor;
+        for (int i = from; i < to; i++) {
+            column[at + i] += product * axis[base + i];
+        }
+    }
+}

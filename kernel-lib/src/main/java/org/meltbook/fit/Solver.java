@@ -1,0 +1,234 @@
+package org.meltbook.fit;
+
+import java.util.Arrays;
+import org.meltbook.base.Progress;
+import org.meltbook.base.RangeException;
+
+/**
+ * Solves one problem by damped Gauss–Newton steps, again and again if asked, with other data, from other starts, or with
+ * coordinates held; without allocation once it is made. For a single fit {@link Problem#solve()} is enough.
+ *
+ * <p>Bounds hold at every trial: a step that would leave them ends on them and is solved anew in the other coordinates,
+ * and a coordinate that rests on a bound stays there while the sum of squares would only fall outside. Where the model
+ * has no value the step is shortened.
+ *
+ * <p>Each step is solved from the QR decomposition of the Jacobian with the damping appended (no normal equations);
+ * columns are scaled by their largest length so far. Damping follows H. B. Nielsen, report IMM-REP-1999-05, Technical
+ * University of Denmark (from memory). Commons Math's optimiser knows neither bounds nor interrupts, hence this one; a
+ * test holds both together.
+ *
+ * <p>One thread at a time. Coordinates are those of {@link Workspace}.
+ */
+public final class Solver {
+    private static final int MOST_EVALUATIONS = 20_000;
+    private static final double FIRST_DAMPING = 1e-3;
+    private static final double LEAST_DAMPING = 1e-16;
+    /** Share of the sum of squares that the best step would still gain: a hundred-millionth of a standard error. */
+    private static final double LEFT_TO_GAIN = 1e-18;
+
+    /** Along what share of a step the curve of the model is looked at. */
+    private static final double PROBE = 0.1;
+    /** A step whose second-order part is longer than this share of it is too long. */
+    private static final double MOST_BEND = 0.375;
+    /** Share of the sum of squares to gain from which on a step is bent. */
+    private static final double WORTH_BENDING = 1e-4;
+
+    private static final double ROUNDING = 0x1p-52;
+    /** A step that changes no coordinate by more than this share of it cannot be told from none. */
+    private static final double SMALL = 1e-14;
+    /** If the best step changes no coordinate by more, and yet lowers nothing, the optimum is reached within rounding. */
+    private static final double SETTLED = 1e-10;
+
+    private final Workspace workspace;
+    private final DampedStep step;
+    private final Projection projection;
+    private final int coordinates;
+    private final boolean[] held;
+    private double[] here;
+    private double[] there;
+    private double[] residuals;
+    private double[] trialResiduals;
+    private final double[] jacobian;
+    private final double[] second;
+    private double cost;
+    private int evaluations;
+
+    private Solver(Problem problem) {
+        this.workspace = Workspace.of(problem);
+        this.coordinates = workspace.coordinates();
+        this.step = new DampedStep(workspace);
+        this.projection = new Projection(workspace);
+        this.held = new boolean[coordinates];
+        this.here = new double[coordinates];
+        this.there = new double[coordinates];
+        this.residuals = new double[workspace.points()];
+        this.trialResiduals = new double[workspace.points()];
+        this.jacobian = new double[workspace.points() * coordinates];
+        this.second = new double[workspace.points()];
+        workspace.inward(problem.start().toArray(), here);
+    }
+
+    /** A solver for the problem, at its start. */
+    public static Solver of(Problem problem) {
+        return new Solver(problem);
+    }
+
+    /** Where data are exchanged and coordinates turned into values. */
+    public Workspace workspace() {
+        return workspace;
+    }
+
+    /** Moves to the coordinates from which the next solution starts; held ones too. */
+    public void start(double[] from) {
+        System.arraycopy(from, 0, here, 0, coordinates);
+    }
+
+    /** Holds a coordinate at a value in the next solutions. */
+    public void hold(int j, double value) {
+        here[j] = value;
+        held[j] = true;
+    }
+
+    /** Lets a held coordinate go. */
+    public void release(int j) {
+        held[j] = false;
+    }
+
+    /** Copies the coordinates reached. */
+    public void coordinates(double[] into) {
+        System.arraycopy(here, 0, into, 0, coordinates);
+    }
+
+    /** What is left of the sum that is minimised. */
+    public double cost() {
+        return cost;
+    }
+
+    /** How often the model was tried in the last solution. */
+    public int evaluations() {
+        return evaluations;
+    }
+
+    /** The fit at the coordinates reached, with the data of the problem, not those exchanged since. */
+    public Fit fit(Fit.Status status) {
+        return Fit.at(workspace.problem(), here, status, evaluations);
+    }
+
+    /**
+     * Steps from where it is to the optimum.
+     *
+     * @throws RangeException if the model has no value at the start
+     */
+    public Fit.Status solve(Progress progress) {
+        evaluations = 0;
+        step.reset();
+        double damping = FIRST_DAMPING;
+        double growth = 2;
+        boolean bending = workspace.problem().loss().plain();
+        project(here);
+        if (!linearise()) {
+            throw new RangeException(workspace.problem().name() + " has no finite value or derivative at the start "
+                    + "of the fit, " + workspace.problem().start());
+        }
+        while (evaluations < MOST_EVALUATIONS) {
+            progress.at(evaluations, 0, "fit");
+            double leftToGain = step.solve(here, held, 0);
+            if (Math.abs(leftToGain) <= LEFT_TO_GAIN * cost) {
+                return Fit.Status.CONVERGED;
+            }
+            boolean settled = step.longest(here) <= SETTLED;
+            double predicted = step.solve(here, held, damping);
+            if (bending && predicted > WORTH_BENDING * cost && !bend(damping)) {
+                damping *= growth;
+                growth *= 2;
+                continue;
+            }
+            for (int j = 0; j < coordinates; j++) {
+                there[j] = here[j] + step.at(j);
+            }
+            project(there);
+            double trial = trial();
+            double gained = cost - trial;
+            if (!(gained > 0)) {
+                if (settled || predicted <= noise()) {
+                    return Fit.Status.CONVERGED; // what is left to gain is below rounding
+                }
+                if (step.longest(here) <= SMALL) {
+                    return Fit.Status.STALLED;
+                }
+                damping *= growth;
+                growth *= 2;
+                bending = workspace.problem().loss().plain();
+                continue;
+            }
+            bending = workspace.problem().loss().plain() && Math.abs(gained / predicted - 1) > 0.1;
+            double quality = 2 * gained / predicted - 1;
+            damping = Math.max(LEAST_DAMPING, damping * Math.max(1.0 / 3, 1 - quality * quality * quality));
+            growth = 2;
+            double[] left = here;
+            here = there;
+            there = left;
+            if (!linearise()) {
+                there = here;
+                here = left;
+                linearise();
+                damping *= 10;
+            }
+        }
+        return Fit.Status.EVALUATIONS_SPENT;
+    }
+
+    /**
+     * Bends the step along the curve of the model, found from one more trial part of the way.
+     *
+     * @return false if the model bends so much that the step should be shorter
+     */
+    private boolean bend(double damping) {
+        evaluations++;
+        for (int j = 0; j < coordinates; j++) {
+            there[j] = here[j] + PROBE * step.at(j);
+        }
+        if (!workspace.residuals(there, trialResiduals)) {
+            return false;
+        }
+        step.change(jacobian, second);
+        for (int i = 0; i < second.length; i++) {
+            second[i] = 2 / PROBE * ((trialResiduals[i] - residuals[i]) / PROBE - second[i]);
+        }
+        return step.bend(here, damping, second) <= MOST_BEND;
+    }
+
+    private boolean linearise() {
+        evaluations++;
+        boolean usable = workspace.linearise(here, residuals, jacobian);
+        if (usable) {
+            cost = workspace.cost(residuals);
+            step.take(residuals, jacobian);
+        }
+        return usable;
+    }
+
+    private void project(double[] coordinates) {
+        if (projection.places().length > 0) {
+            evaluations++;
+            projection.apply(coordinates, held);
+        }
+    }
+
+    private double trial() {
+        evaluations++;
+        return workspace.residuals(there, trialResiduals) ? workspace.cost(trialResiduals) : Double.NaN;
+    }
+
+    /** By how much rounding may change the sum of squares. */
+    private double noise() {
+        double size = workspace.size();
+        return 4 * ROUNDING * size * (Math.sqrt(cost) + ROUNDING * size);
+    }
+
+    /** The arrays, for tests that look inside. */
+    @Override
+    public String toString() {
+        return "solver of " + workspace.problem().name() + " at " + Arrays.toString(here);
+    }
+}
