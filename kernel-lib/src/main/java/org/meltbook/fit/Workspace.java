@@ -219,9 +219,7 @@ public final class Workspace {
         int from = j * points + part.offset;
         boolean logarithm = part.set.weighting() == Weighting.LOGARITHMIC;
         for (int i = 0; i < n; i++) {
-            double divisor = logarithm
-                    ? divisors[part.offset + i] * part.value[i]
-                    : divisors[part.offset + i];
+            double divisor = logarithm ? divisors[part.offset + i] * part.value[i] : divisors[part.offset + i];
             jacobian[from + i] += part.derivative[k * n + i] * stretch / divisor;
         }
     }
@@ -264,9 +262,10 @@ public final class Workspace {
     private boolean linear(int j) {
         String name = parameters[free[j]].name();
         for (Part part : parts) {
-            boolean there = part.set.model().parameters().stream().anyMatch(p -> p.name().equals(name));
-            boolean linear = part.set.model().linearIn().contains(name)
-                    && part.set.weighting() != Weighting.LOGARITHMIC;
+            boolean there = part.set.model().parameters().stream()
+                    .anyMatch(p -> p.name().equals(name));
+            boolean linear =
+                    part.set.model().linearIn().contains(name) && part.set.weighting() != Weighting.LOGARITHMIC;
             if (there && !linear) {
                 return false;
             }
