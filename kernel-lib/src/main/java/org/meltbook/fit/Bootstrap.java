@@ -5,6 +5,8 @@ import java.util.Arrays;
 import java.util.List;
 import java.util.function.Function;
 import java.util.stream.IntStream;
+import java.util.stream.Stream;
+import org.apache.commons.math3.distribution.NormalDistribution;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
@@ -20,7 +22,9 @@ import org.meltbook.figure.Figure;
  * <p>Percentile intervals take the quantiles of the refitted values; they are known to be too narrow with few points.
  * Studentised ones take the quantiles of (refit − fit) / standard error of the refit, on the scale on which the
  * parameter was stepped, and lay them off from the fit with its own standard error. Source: A. C. Davison and
- * D. V. Hinkley, Bootstrap Methods and their Application (1997), sections 5.2 and 5.3 (memory).
+ * D. V. Hinkley, Bootstrap Methods and their Application (1997), sections 5.2 and 5.3 (memory). BCa ones are percentile
+ * intervals corrected for bias and for a standard error that changes with the parameter; the latter is judged from fits
+ * with one point left out, which is exact for a mean and an approximation else.
  *
  * <p>Refits that fail are left out and counted, in the table and, if there are any, in a caution.
  */
@@ -31,12 +35,15 @@ public final class Bootstrap implements Exhibit {
     private final BootstrapSettings settings;
     private final List<Doubles> refits;
     private final List<Doubles> ratios;
+    private final Doubles accelerations;
 
-    private Bootstrap(Fit fit, BootstrapSettings settings, List<Doubles> refits, List<Doubles> ratios) {
+    private Bootstrap(
+            Fit fit, BootstrapSettings settings, List<Doubles> refits, List<Doubles> ratios, Doubles accelerations) {
         this.fit = fit;
         this.settings = settings;
         this.refits = List.copyOf(refits);
         this.ratios = List.copyOf(ratios);
+        this.accelerations = accelerations;
     }
 
     /** Draws and fits again. */
@@ -69,7 +76,8 @@ public final class Bootstrap implements Exhibit {
                 studentised.add(Doubles.of(ratios[k]));
             }
         }
-        return new Bootstrap(fit, settings, good, studentised);
+        Doubles accelerations = Jackknife.accelerations(fit, settings.threads(), progress);
+        return new Bootstrap(fit, settings, good, studentised, accelerations);
     }
 
     private static void check(Fit fit, BootstrapSettings settings) {
@@ -169,6 +177,34 @@ public final class Bootstrap implements Exhibit {
         return new ParameterInterval("studentised", Math.max(own.low(), low), Math.min(own.high(), high));
     }
 
+    /**
+     * Percentile interval corrected for bias and acceleration (BCa); NaN if all refits lie on one side of the fit, a fit
+     * with one point left out failed, or an end lies beyond the first or last refit.
+     */
+    public ParameterInterval corrected(String parameter) {
+        double[] samples = samples(parameter).toArray();
+        double value = value(parameter);
+        double below = Arrays.stream(samples)
+                .map(v -> v < value ? 1 : v == value ? 0.5 : 0)
+                .average()
+                .orElse(0);
+        if (!(below > 0 && below < 1)) {
+            return new ParameterInterval("BCa", Double.NaN, Double.NaN);
+        }
+        NormalDistribution normal = new NormalDistribution();
+        double offset = normal.inverseCumulativeProbability(below);
+        double acceleration = accelerations.at(fit.problem().place(parameter));
+        Quantiles quantiles = Quantiles.of(samples);
+        double[] ends = {tail(), 1 - tail()};
+        for (int k = 0; k < ends.length; k++) {
+            double z = offset + normal.inverseCumulativeProbability(ends[k]);
+            double share = normal.cumulativeProbability(offset + z / (1 - acceleration * z));
+            double place = share * (samples.length + 1);
+            ends[k] = place >= 1 && place <= samples.length ? quantiles.at(share) : Double.NaN;
+        }
+        return new ParameterInterval("BCa", ends[0], ends[1]);
+    }
+
     private List<Parameter> shown() {
         return fit.estimates().stream()
                 .filter(estimate -> estimate.status() != Estimate.Status.HELD)
@@ -194,8 +230,10 @@ public final class Bootstrap implements Exhibit {
     }
 
     private String best(String parameter) {
-        ParameterInterval studentised = studentised(parameter);
-        ParameterInterval shown = Double.isNaN(studentised.low()) ? percentile(parameter) : studentised;
+        ParameterInterval shown = Stream.of(studentised(parameter), corrected(parameter))
+                .filter(ParameterInterval::exists)
+                .findFirst()
+                .orElseGet(() -> percentile(parameter));
         return shown + " (" + shown.method() + ")";
     }
 
@@ -209,6 +247,8 @@ public final class Bootstrap implements Exhibit {
                 .text("mean of refits − fit", each(parameters, name -> NumberText.of(bias(name))))
                 .text("standard deviation of refits", each(parameters, name -> NumberText.of(standardError(name))))
                 .text(percent() + ", studentised", each(parameters, name -> studentised(name)
+                        .toString()))
+                .text(percent() + ", BCa", each(parameters, name -> corrected(name)
                         .toString()))
                 .text(percent() + ", percentile", each(parameters, name -> percentile(name)
                         .toString()))
@@ -260,7 +300,7 @@ public final class Bootstrap implements Exhibit {
                     samples(parameter.name()).stream().filter(parameter::atBound).count();
             if (resting > 0 && parameter.isFree()) {
                 all.add(parameter.label() + " rests on a bound in " + resting + " of " + refits.size()
-                        + " refits: there are no studentised intervals, and percentile ones stop at the bound");
+                        + " refits: there are no studentised intervals, and the others stop at the bound");
             }
         }
         if (settings.kind() == BootstrapSettings.Kind.RESIDUAL
