@@ -223,18 +223,19 @@ public final class Bootstrap implements Exhibit {
                 + String.join(
                         "; ",
                         shown().stream()
-                                .map(p -> p.label() + " " + best(p.name())
-                                        + (p.unit().equals("1") ? "" : " " + p.unit()))
+                                .map(this::best)
                                 .toList())
                 + ".";
     }
 
-    private String best(String parameter) {
-        ParameterInterval shown = Stream.of(studentised(parameter), corrected(parameter))
+    private String best(Parameter parameter) {
+        String name = parameter.name();
+        ParameterInterval shown = Stream.of(studentised(name), corrected(name))
                 .filter(ParameterInterval::exists)
                 .findFirst()
-                .orElseGet(() -> percentile(parameter));
-        return shown + " (" + shown.method() + ")";
+                .orElseGet(() -> percentile(name));
+        String unit = parameter.unit().equals("1") ? "" : " " + parameter.unit();
+        return parameter.label() + " " + shown + unit + " (" + shown.method() + ")";
     }
 
     @Override

@@ -85,74 +85,70 @@ final class ProfileTrace {
         for (int tried = 0; tried < MOST_SOLUTIONS; tried++) {
             double from = last.coordinates[held];
             if (from == limit) {
-                return new ProfileEnd(ProfileEnd.Kind.BOUND, edge(way), value(limit), last.root * last.root);
+                return unfinished(ProfileEnd.Kind.BOUND, way, last);
             } else if (Math.abs(from - start) > reach) {
-                return new ProfileEnd(ProfileEnd.Kind.OPEN, edge(way), value(from), last.root * last.root);
+                return unfinished(ProfileEnd.Kind.OPEN, way, last);
+            } else if (!(step > CLOSE * width)) {
+                return unfinished(ProfileEnd.Kind.LOST, way, last);
             }
-            double next = way < 0 ? Math.max(limit, from - step) : Math.min(limit, from + step);
-            Place place = next == from ? null : solved(next, before, last);
+            Place place = solved(way < 0 ? Math.max(limit, from - step) : Math.min(limit, from + step), before, last);
             if (place == null) {
                 step /= 4;
-                if (!(step > CLOSE * width)) {
-                    return new ProfileEnd(ProfileEnd.Kind.LOST, edge(way), value(from), last.root * last.root);
-                }
                 continue;
-            }
-            if (place.root >= target) {
-                double end = crossing(last, place);
-                return new ProfileEnd(ProfileEnd.Kind.DATA, value(end), value(end), target * target);
+            } else if (place.root >= target) {
+                double end = value(crossing(last, place));
+                return new ProfileEnd(ProfileEnd.Kind.DATA, end, end, target * target);
             }
             double gained = (place.root - last.root) * STEPS / target;
             step *= gained > 0.5 ? Math.max(0.4, Math.min(2, 1 / gained)) : 2;
             before = last;
             last = place;
         }
-        return new ProfileEnd(
-                ProfileEnd.Kind.OPEN, edge(way), value(last.coordinates[held]), last.root * last.root);
+        return unfinished(ProfileEnd.Kind.OPEN, way, last);
+    }
+
+    private ProfileEnd unfinished(ProfileEnd.Kind kind, int way, Place last) {
+        double edge = way < 0 ? parameter.low() : parameter.high();
+        return new ProfileEnd(kind, edge, value(last.coordinates[held]), last.root * last.root);
     }
 
     private double unknownScale(double start) {
         return parameter.scale() == Parameter.Scale.LOG || start == 0 ? 1 : Math.abs(start);
     }
 
-    private double edge(int way) {
-        return way < 0 ? parameter.low() : parameter.high();
-    }
-
     private double value(double inner) {
         return Math.min(parameter.high(), Math.max(parameter.low(), parameter.outward(inner)));
     }
 
-    /** Where the root of the rise meets the target: false position, the kept end halved (Illinois). */
+    /** Where the root of the rise meets the target: false position, an end kept twice halved (Illinois). */
     private double crossing(Place inside, Place outside) {
-        double low = inside.coordinates[held];
-        double high = outside.coordinates[held];
-        double below = inside.root - target;
-        double above = outside.root - target;
         Place near = inside;
         Place far = outside;
+        double low = near.coordinates[held];
+        double high = far.coordinates[held];
+        double below = near.root - target;
+        double above = far.root - target;
+        int kept = 0; // −1 if the last place replaced the lower end, 1 if the upper one
         for (int k = 0; k < MOST_SECANTS && Math.abs(high - low) > 1e-13 * Math.abs(high); k++) {
             double middle = high - above * (high - low) / (above - below);
             Place place = solved(middle, near, far);
-            if (place == null) {
-                high = middle; // no value there: the crossing must lie before it
-                above /= 2;
-                continue;
-            }
-            double miss = place.root - target;
-            if (Math.abs(miss) <= CLOSE * target) {
+            // where there is no value the crossing must lie before
+            double miss = place == null ? Math.max(above, CLOSE * target) : place.root - target;
+            if (Math.abs(miss) <= CLOSE * target && place != null) {
                 return middle;
             }
             if (miss < 0) {
                 low = middle;
                 below = miss;
-                above /= 2;
+                above = kept < 0 ? above / 2 : above;
+                kept = -1;
                 near = place;
             } else {
                 high = middle;
                 above = miss;
-                below /= 2;
-                far = place;
+                below = kept > 0 ? below / 2 : below;
+                kept = 1;
+                far = place == null ? far : place;
             }
         }
         return high;
