@@ -31,11 +31,11 @@ public final class Bands implements Exhibit {
     private final Doubles value;
     private final Doubles low;
     private final Doubles high;
-    private final Optional<Layer> prediction;
+    private final Optional<Edges> prediction;
     private final List<String> remarks;
 
     /** The ends of a band. */
-    private record Layer(Doubles low, Doubles high) {}
+    private record Edges(Doubles low, Doubles high) {}
 
     private Bands(Draft draft) {
         this.fit = draft.fit;
@@ -48,7 +48,7 @@ public final class Bands implements Exhibit {
         this.low = Doubles.of(draft.low);
         this.high = Doubles.of(draft.high);
         this.prediction = draft.predicted
-                ? Optional.of(new Layer(Doubles.of(draft.lowest), Doubles.of(draft.highest)))
+                ? Optional.of(new Edges(Doubles.of(draft.lowest), Doubles.of(draft.highest)))
                 : Optional.empty();
         this.remarks = List.copyOf(draft.remarks);
     }
@@ -215,12 +215,12 @@ public final class Bands implements Exhibit {
 
     /** Lower edge of the prediction band, if there is one. */
     public Optional<Doubles> lowPrediction() {
-        return prediction.map(Layer::low);
+        return prediction.map(Edges::low);
     }
 
     /** Upper edge of the prediction band, if there is one. */
     public Optional<Doubles> highPrediction() {
-        return prediction.map(Layer::high);
+        return prediction.map(Edges::high);
     }
 
     private String percent() {

@@ -19,7 +19,7 @@ public record ProfileEnd(Kind kind, double value, double reached, double rise) {
         BOUND,
         /** The profile stays below the threshold as far as it was followed: the data do not end the interval. */
         OPEN,
-        /** The model has no value further on, with the profile still below the threshold. */
+        /** The model has no value further on, or a tied parameter would leave its bounds, with the profile still below the threshold. */
         LOST
     }
 
@@ -29,7 +29,8 @@ public record ProfileEnd(Kind kind, double value, double reached, double rise) {
             case DATA -> "set by the data";
             case BOUND -> "set by the bound, not by the data";
             case OPEN -> "open: profile below the threshold as far as " + NumberText.of(reached);
-            case LOST -> "not known: no value of the model beyond " + NumberText.of(reached);
+            case LOST -> "not known: no value of the model, or a tied parameter at its bound, beyond "
+                    + NumberText.of(reached);
         };
     }
 }

@@ -182,6 +182,31 @@ class ProfileLikelihoodTest {
     }
 
     @Test
+    void with_a_robust_loss_it_meets_the_standard_error_near_the_optimum() {
+        // identity: for a constant the curvature of the cost is n · mean curvature of the loss, so that a small level
+        // gives value ± t · standard error; the outlier keeps its place
+        Model constant = new TestModel(1, (x, b) -> b[0], (x, b, d) -> d[0] = 1);
+        Doubles y = Doubles.of(1.1, 0.8, 1.3, 0.9, 1.05, 0.95, 1.2, 9);
+        Fit fit = Problem.of(constant).data(X, y).loss(Loss.softL1(0.5)).from(1).solve();
+        ProfileLikelihood profile = profile(fit, "b1", 0.01);
+        double half = Math.sqrt(profile.threshold()) * fit.standardError("b1");
+        assertEquals(2 * half, profile.high() - profile.low(), 1e-3 * half);
+    }
+
+    @Test
+    void a_tied_parameter_follows_along_the_profile() {
+        // y = b1 (1 + 2 x) is linear in b1: closed form of the interval by Student's t
+        Tie tie = new Tie("b2", List.of("b1"), s -> 2 * s[0], "b2 = 2 b1");
+        Fit fit = Problem.of(LINE).data(X, NOISY).tie(tie).from(1, 2).solve();
+        ProfileLikelihood profile = ProfileLikelihood.of(fit, "b1");
+        assertEquals(fit.estimate("b1").low(), profile.low(), 1e-8);
+        assertEquals(fit.estimate("b1").high(), profile.high(), 1e-8);
+        ProfilePoint first = profile.points().get(0);
+        assertEquals(2 * first.value(), first.values().at(1), 1e-12);
+        assertThrows(RangeException.class, () -> ProfileLikelihood.of(fit, "b2"));
+    }
+
+    @Test
     void a_better_fit_met_on_the_way_is_told() {
         // cos(b x) has many optima; 5.9 is not the best one for data made with 5
         Doubles x = Doubles.of(0, 0.5, 1, 1.5, 2, 2.5, 3);
