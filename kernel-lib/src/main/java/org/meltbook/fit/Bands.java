@@ -272,7 +272,8 @@ public final class Bands implements Exhibit {
         measured.ifPresent(set -> {
             if (x.smallest() < set.x().smallest() || x.largest() > set.x().largest()) {
                 all.add("the band reaches beyond the measured points, which lie from "
-                        + NumberText.of(set.x().smallest()) + " to " + NumberText.of(set.x().largest())
+                        + NumberText.of(set.x().smallest()) + " to "
+                        + NumberText.of(set.x().largest())
                         + ": there it holds only if the model does");
             }
         });

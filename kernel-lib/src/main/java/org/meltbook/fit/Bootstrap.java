@@ -220,11 +220,7 @@ public final class Bootstrap implements Exhibit {
     public String headline() {
         return fit.problem().name() + ": " + refits.size() + " of " + settings.refits() + " refits ("
                 + settings.kind().words() + "), " + percent() + " intervals: "
-                + String.join(
-                        "; ",
-                        shown().stream()
-                                .map(this::best)
-                                .toList())
+                + String.join("; ", shown().stream().map(this::best).toList())
                 + ".";
     }
 
@@ -297,15 +293,15 @@ public final class Bootstrap implements Exhibit {
                     + " refits, there are " + refits.size());
         }
         for (Parameter parameter : shown()) {
-            long resting =
-                    samples(parameter.name()).stream().filter(parameter::atBound).count();
+            long resting = samples(parameter.name()).stream()
+                    .filter(parameter::atBound)
+                    .count();
             if (resting > 0 && parameter.isFree()) {
                 all.add(parameter.label() + " rests on a bound in " + resting + " of " + refits.size()
                         + " refits: there are no studentised intervals, and the others stop at the bound");
             }
         }
-        if (settings.kind() == BootstrapSettings.Kind.RESIDUAL
-                && fit.problem().errors() == ErrorModel.ABSOLUTE) {
+        if (settings.kind() == BootstrapSettings.Kind.RESIDUAL && fit.problem().errors() == ErrorModel.ABSOLUTE) {
             all.add("residuals are drawn, so percentile intervals follow the scatter around the model, not the "
                     + "deviations that were given as absolute");
         }

@@ -42,8 +42,8 @@ public record BootstrapSettings(long seed, int refits, Kind kind, int threads, d
     public BootstrapSettings {
         Level.check(level);
         if (refits < 20 || threads < 1) {
-            throw new RangeException("a bootstrap needs at least 20 refits and 1 thread, found " + refits + " refits and "
-                    + threads + " threads");
+            throw new RangeException("a bootstrap needs at least 20 refits and 1 thread, found " + refits
+                    + " refits and " + threads + " threads");
         }
     }
 

@@ -34,7 +34,8 @@ final class Jackknife implements Parallel.Work {
             int place = p;
             double[] each = Arrays.stream(values).mapToDouble(all -> all[place]).toArray();
             double mean = Arrays.stream(each).average().orElse(Double.NaN);
-            double square = Arrays.stream(each).map(v -> (mean - v) * (mean - v)).sum();
+            double square =
+                    Arrays.stream(each).map(v -> (mean - v) * (mean - v)).sum();
             double cube = Arrays.stream(each).map(v -> Math.pow(mean - v, 3)).sum();
             accelerations[p] = cube / (6 * Math.pow(square, 1.5));
         }

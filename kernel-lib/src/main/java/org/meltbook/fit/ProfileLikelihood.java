@@ -80,8 +80,9 @@ public final class ProfileLikelihood implements Exhibit {
             throw new RangeException("the profile of " + parameter + " needs a fit that converged");
         }
         if (!(scale(fit) > 0)) {
-            throw new RangeException("the profile of " + parameter + " needs scatter around the model, found a residual "
-                    + "variance of " + fit.variance() + " at " + fit.degreesOfFreedom() + " degrees of freedom");
+            throw new RangeException("the profile of " + parameter
+                    + " needs scatter around the model, found a residual " + "variance of " + fit.variance() + " at "
+                    + fit.degreesOfFreedom() + " degrees of freedom");
         }
         return new ProfileLikelihood(fit, parameter, level, progress);
     }
@@ -105,7 +106,8 @@ public final class ProfileLikelihood implements Exhibit {
 
     private static double scale(Fit fit) {
         Loss loss = fit.problem().loss();
-        return fit.variance() * fit.residuals().stream().map(loss::curvature).average().orElse(Double.NaN);
+        return fit.variance()
+                * fit.residuals().stream().map(loss::curvature).average().orElse(Double.NaN);
     }
 
     /** The parameter whose profile this is. */
@@ -203,14 +205,17 @@ public final class ProfileLikelihood implements Exhibit {
                 trace.numbers(
                         other.label(),
                         other.unit(),
-                        points.stream().mapToDouble(point -> point.values().at(at)).toArray());
+                        points.stream()
+                                .mapToDouble(point -> point.values().at(at))
+                                .toArray());
             }
         }
         return List.of(interval, trace.build());
     }
 
     private double fromError(int way) {
-        double inner = fit.estimate(parameter.name()).error() / parameter.stretch(fit.values().at(place));
+        double inner = fit.estimate(parameter.name()).error()
+                / parameter.stretch(fit.values().at(place));
         return parameter.outward(parameter.inward(fit.values().at(place)) + way * quantile * inner);
     }
 
@@ -227,7 +232,8 @@ public final class ProfileLikelihood implements Exhibit {
         Axis.Scale scale = parameter.scale() == Parameter.Scale.LOG ? Axis.Scale.LOG : Axis.Scale.LINEAR;
         Doubles values = values();
         Doubles ends = Doubles.of(values.smallest(), values.largest());
-        double error = fit.estimate(parameter.name()).error() / parameter.stretch(fit.values().at(place));
+        double error = fit.estimate(parameter.name()).error()
+                / parameter.stretch(fit.values().at(place));
         Figure.Builder figure = Figure.titled("Profile of " + parameter.label())
                 .x(new Axis(parameter.label(), parameter.unit(), scale))
                 .y(new Axis("rise of the cost / residual variance", "1", Axis.Scale.LINEAR))

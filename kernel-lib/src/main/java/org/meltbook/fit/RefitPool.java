@@ -73,9 +73,7 @@ final class RefitPool {
             DataSet set = problem.dataSets().get(d);
             int from = problem.offset(d);
             for (int i = 0; i < set.size(); i++) {
-                double error = normal
-                        ? -width * random.nextGaussian()
-                        : errors[from + random.nextInt(set.size())];
+                double error = normal ? -width * random.nextGaussian() : errors[from + random.nextInt(set.size())];
                 into[from + i] = measured(set, i, model[from + i], error);
                 allowed &= Double.isFinite(into[from + i]);
             }

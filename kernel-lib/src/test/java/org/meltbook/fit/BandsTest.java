@@ -73,7 +73,10 @@ class BandsTest {
                 - 4 * fit.covariance("height", "rate") / h
                 + 4 * fit.covariance("rate", "rate");
         double t = new TDistribution(6).inverseCumulativeProbability(0.975);
-        assertEquals(t * Math.sqrt(variance), Math.log(model.high().at(0) / model.value().at(0)), 1e-6);
+        assertEquals(
+                t * Math.sqrt(variance),
+                Math.log(model.high().at(0) / model.value().at(0)),
+                1e-6);
     }
 
     @Test
@@ -88,11 +91,12 @@ class BandsTest {
         for (int i = 0; i < 2; i++) {
             double t = new TDistribution(6).inverseCumulativeProbability(0.975);
             double confidence = bands.high().at(i) - bands.value().at(i);
-            double prediction = bands.highPrediction().orElseThrow().at(i)
-                    - bands.value().at(i);
+            double prediction =
+                    bands.highPrediction().orElseThrow().at(i) - bands.value().at(i);
             // variances add: what is left over the confidence band is the scatter, a share of the value
             double scatter = Math.sqrt(prediction * prediction - confidence * confidence) / t;
-            assertEquals(Math.sqrt(fit.reducedChiSquare()), scatter / bands.value().at(i), 1e-9);
+            assertEquals(
+                    Math.sqrt(fit.reducedChiSquare()), scatter / bands.value().at(i), 1e-9);
         }
     }
 

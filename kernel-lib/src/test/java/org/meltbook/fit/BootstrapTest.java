@@ -62,7 +62,8 @@ class BootstrapTest {
         int refits = 4000;
         Bootstrap bootstrap = Bootstrap.of(fit, BootstrapSettings.parametric(6).refits(refits));
         Estimate exact = fit.estimate("b1");
-        // (mean − true mean) / standard error has Student's t distribution exactly; a quantile of share p of R draws errs
+        // (mean − true mean) / standard error has Student's t distribution exactly; a quantile of share p of R draws
+        // errs
         // by sqrt(p (1 − p) / R) over the density there
         TDistribution student = new TDistribution(11);
         double density = student.density(student.inverseCumulativeProbability(0.975));
@@ -81,8 +82,7 @@ class BootstrapTest {
         double mean = y.stream().average().orElseThrow();
         double wider = Math.sqrt(16.0 / 15);
         Fit fit = Problem.of(CONSTANT).data(y, y).from(1).solve();
-        Bootstrap bootstrap =
-                Bootstrap.of(fit, BootstrapSettings.residual(11).refits(10_000));
+        Bootstrap bootstrap = Bootstrap.of(fit, BootstrapSettings.residual(11).refits(10_000));
         // 10000 draws: a percentile errs by up to 0.010, a corrected one by 0.015; three times allowed
         ParameterInterval corrected = bootstrap.corrected("b1");
         assertEquals(mean + wider * (0.89375 - mean), corrected.low(), 0.045);
@@ -127,8 +127,7 @@ class BootstrapTest {
             RefitPool pool = RefitPool.of(fit, BootstrapSettings.Kind.RESIDUAL);
             assertTrue(pool.draw(new Random(3), first));
             Random same = new Random(3);
-            int[] places =
-                    X.stream().mapToInt(x -> same.nextInt(X.size())).toArray();
+            int[] places = X.stream().mapToInt(x -> same.nextInt(X.size())).toArray();
             Workspace workspace = Workspace.of(problem);
             workspace.measured(first);
             assertTrue(workspace.residuals(fit.coordinates().toArray(), second));
@@ -187,8 +186,7 @@ class BootstrapTest {
         assertThrows(RangeException.class, () -> BootstrapSettings.residual(1).refits(5));
         assertThrows(RangeException.class, () -> BootstrapSettings.residual(1).threads(0));
         assertThrows(RangeException.class, () -> BootstrapSettings.residual(1).level(1));
-        Fit exact =
-                Problem.of(CONSTANT).data(X, X.map(x -> 2)).from(1).solve();
+        Fit exact = Problem.of(CONSTANT).data(X, X.map(x -> 2)).from(1).solve();
         assertThrows(RangeException.class, () -> Bootstrap.of(exact, BootstrapSettings.residual(1)));
         Fit robust = Problem.of(CONSTANT)
                 .data(X, SCATTERED)

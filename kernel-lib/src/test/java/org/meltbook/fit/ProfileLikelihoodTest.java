@@ -99,7 +99,8 @@ class ProfileLikelihoodTest {
 
     @Test
     void agrees_with_a_general_purpose_tool_on_published_data() {
-        // NIST StRD Misra1a; SciPy 1.10.1: S(b2) = least over b1 in closed form (f·y / f·f), S(b1) = root over b2 of its
+        // NIST StRD Misra1a; SciPy 1.10.1: S(b2) = least over b1 in closed form (f·y / f·f), S(b1) = root over b2 of
+        // its
         // derivative, ends by brentq of (S − least S) / (least S / 12) = t(0.975, 12)²
         StatisticalReference misra = StatisticalReference.of("Misra1a");
         Model model = new TestModel(2, (x, b) -> b[0] * -Math.expm1(-b[1] * x), (x, b, d) -> {
@@ -132,8 +133,11 @@ class ProfileLikelihoodTest {
         assertEquals(ProfileEnd.Kind.OPEN, profile.upper().kind());
         assertEquals(Double.POSITIVE_INFINITY, profile.high());
         assertTrue(profile.headline().contains("the data do not end it above"), profile.headline());
-        assertTrue(profile.cautions().get(0).contains("the upper end"), profile.cautions().toString());
-        assertTrue(profile.cautions().get(0).contains("open"), profile.cautions().toString());
+        assertTrue(
+                profile.cautions().get(0).contains("the upper end"),
+                profile.cautions().toString());
+        assertTrue(
+                profile.cautions().get(0).contains("open"), profile.cautions().toString());
     }
 
     @Test
@@ -229,7 +233,9 @@ class ProfileLikelihoodTest {
         assertEquals(3, profile.figures().get(0).layers().size());
         assertFalse(profile.rows().get(1).column("b1").text(0).isBlank());
         // six steps a side to the threshold of a parabola, then a secant that meets it at once
-        assertTrue(profile.points().size() < 22, "places solved: " + profile.points().size());
+        assertTrue(
+                profile.points().size() < 22,
+                "places solved: " + profile.points().size());
         // exact parabola: the profile and what the standard error says are one line
         for (ProfilePoint point : profile.points()) {
             double t = (point.value() - fit.values().at(1)) / fit.standardError("b2");
