@@ -8,6 +8,8 @@ import static org.junit.jupiter.api.Assertions.assertTrue;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import java.util.Set;
+import java.util.stream.Collectors;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
@@ -17,6 +19,7 @@ import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows.TextColumn;
+import org.meltbook.fit.Comparison;
 import org.meltbook.fit.Estimate;
 import org.meltbook.fit.Fit;
 import org.meltbook.measure.Conditions;
@@ -102,6 +105,23 @@ class ViscosityFitTest {
         assertTrue(survey.fits().get(1).fit().rootMeanSquare()
                 < survey.fits().get(0).fit().rootMeanSquare());
         assertThrows(RangeException.class, () -> LawSurvey.of(silicone("0.0000"), List.of(), Progress.QUIET));
+    }
+
+    @Test
+    void a_survey_ranks_the_laws_and_says_which_the_points_support() {
+        LawSurvey survey = LawSurvey.of(silicone("0.0000"));
+        Comparison comparison = survey.comparison().orElseThrow();
+        assertTrue(survey.headline().endsWith(comparison.sentence()), survey.headline());
+        assertEquals(comparison.rows().get(0), survey.rows().get(1));
+        // a plateau that falls off: laws without one or without the fall cannot hold against those with both
+        assertEquals(
+                Set.of(Cross.FAMILY.name(), CarreauYasuda.FAMILY.name()),
+                comparison.ranked().subList(0, 2).stream()
+                        .map(Comparison.Entry::name)
+                        .collect(Collectors.toSet()));
+        assertTrue(LawSurvey.of(silicone("0.0000"), List.of(Cross.FAMILY), Progress.QUIET)
+                .comparison()
+                .isEmpty());
     }
 
     @Test
@@ -198,7 +218,8 @@ class ViscosityFitTest {
     void a_law_that_lies_too_low_misses_by_a_percentage_and_not_by_a_difference_of_logarithms() {
         Doubles rates = Doubles.logSpaced(1e-3, 1e3, 30);
         ViscosityFit fit = ViscosityFit.of(curve(rates, rates.map(new Cross(9300, 0.8, 0.66)::at)), Newtonian.FAMILY);
-        double mean = CurveShape.of(rates, fit.fit().problem().only().y()).lowEnd().mean();
+        double mean =
+                CurveShape.of(rates, fit.fit().problem().only().y()).lowEnd().mean();
         double below = 1 - fit.law().zeroRateLimit() / mean;
         assertTrue(below > 0.5, "the case has to tell a share from a logarithm: " + below);
         String words = NumberText.of(100 * below, 2) + " % below";
