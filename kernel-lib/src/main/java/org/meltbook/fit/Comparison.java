@@ -109,7 +109,7 @@ public final class Comparison implements Exhibit {
         return ranked;
     }
 
-    /** What the comparison comes to, in one plain sentence. */
+    /** What the comparison comes to, in one plain sentence that starts with "The". */
     public String sentence() {
         List<Entry> judged = ranked.stream().filter(Entry::judged).toList();
         if (judged.isEmpty()) {
@@ -117,12 +117,12 @@ public final class Comparison implements Exhibit {
         }
         Entry best = judged.get(0);
         if (judged.size() == 1) {
-            return "Only " + best.name() + " can be judged by AICc on these points.";
+            return "The points are too few to judge any of these models but " + best.name() + " by AICc.";
         }
         List<Entry> close =
                 judged.stream().filter(e -> e.difference() < UNDECIDED).toList();
         if (close.size() > 1) {
-            String names = close.stream().map(Entry::name).collect(Collectors.joining(", "));
+            String names = close.stream().map(Entry::name).collect(Collectors.joining(" and "));
             Entry simplest = close.stream()
                     .min(Comparator.comparingInt(e -> e.criteria().parameters()))
                     .orElseThrow();

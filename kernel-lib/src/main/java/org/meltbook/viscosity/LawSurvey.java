@@ -75,8 +75,10 @@ public final class LawSurvey implements Exhibit {
                 .map(fit -> fit.law().family().name() + " by " + miss(fit) + " %")
                 .toList();
         return curve.conditions().sample() + ": the points are missed (root mean square) by the "
-                + String.join(", the ", misses) + "."
-                + comparison.map(ranking -> " " + ranking.sentence()).orElse("");
+                + String.join(", the ", misses)
+                + comparison
+                        .map(ranking -> "; t" + ranking.sentence().substring(1))
+                        .orElse(".");
     }
 
     private static String miss(ViscosityFit fit) {

@@ -111,7 +111,7 @@ class ViscosityFitTest {
     void a_survey_ranks_the_laws_and_says_which_the_points_support() {
         LawSurvey survey = LawSurvey.of(silicone("0.0000"));
         Comparison comparison = survey.comparison().orElseThrow();
-        assertTrue(survey.headline().endsWith(comparison.sentence()), survey.headline());
+        assertTrue(survey.headline().endsWith(comparison.sentence().substring(1)), survey.headline());
         assertEquals(comparison.rows().get(0), survey.rows().get(1));
         // a plateau that falls off: laws without one or without the fall cannot hold against those with both
         assertEquals(
