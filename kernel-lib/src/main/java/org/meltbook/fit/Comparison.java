@@ -5,6 +5,7 @@ import java.util.Comparator;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.ToDoubleFunction;
 import java.util.stream.Collectors;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
@@ -166,7 +167,7 @@ public final class Comparison implements Exhibit {
                 .build());
     }
 
-    private Doubles numbers(java.util.function.ToDoubleFunction<Entry> number) {
+    private Doubles numbers(ToDoubleFunction<Entry> number) {
         return Doubles.of(ranked.stream().mapToDouble(number).toArray());
     }
 

@@ -3,6 +3,7 @@ package org.meltbook.fit;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.IntToDoubleFunction;
 import java.util.stream.IntStream;
 import org.apache.commons.math3.distribution.ChiSquaredDistribution;
 import org.meltbook.base.Doubles;
@@ -117,12 +118,8 @@ public final class Diagnosis implements Exhibit {
                 : Optional.empty();
     }
 
-    private static Doubles each(IntStream places, java.util.function.IntToDoubleFunction value) {
-        return Doubles.of(places.mapToDouble(value).toArray());
-    }
-
-    private Doubles each(java.util.function.IntToDoubleFunction value) {
-        return each(IntStream.range(0, leverage.size()), value);
+    private Doubles each(IntToDoubleFunction value) {
+        return Doubles.of(IntStream.range(0, leverage.size()).mapToDouble(value).toArray());
     }
 
     /** What speaks against the fit, in words; empty if nothing does. */
@@ -201,9 +198,7 @@ public final class Diagnosis implements Exhibit {
         leftOut.filter(out -> out.unconverged() > 0)
                 .ifPresent(out -> all.add(out.unconverged() + " of the " + out.refits()
                         + " fits with a point left out did not converge"));
-        if (!fit.identification().isEmpty()) {
-            all.addAll(fit.identification());
-        }
+        all.addAll(fit.identification());
         return List.copyOf(all);
     }
 

@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.ToDoubleFunction;
 import java.util.stream.IntStream;
 import org.apache.commons.math3.linear.ArrayRealVector;
 import org.apache.commons.math3.linear.RealMatrix;
@@ -222,7 +223,7 @@ public final class NextMeasurement implements Exhibit {
         return List.of(rows.build());
     }
 
-    private Doubles numbers(java.util.function.ToDoubleFunction<Candidate> number) {
+    private Doubles numbers(ToDoubleFunction<Candidate> number) {
         return Doubles.of(ranked.stream().mapToDouble(number).toArray());
     }
 
