@@ -1,7 +1,10 @@
 package org.meltbook.viscosity;
 
 import java.util.ArrayList;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
+import java.util.Optional;
 import org.meltbook.base.Doubles;
 import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
@@ -9,23 +12,29 @@ import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows;
 import org.meltbook.figure.Exhibit;
 import org.meltbook.figure.Figure;
+import org.meltbook.fit.Comparison;
 import org.meltbook.fit.Estimate;
+import org.meltbook.fit.Fit;
 import org.meltbook.measure.Curve;
 import org.meltbook.measure.FlowCurve;
 import org.meltbook.units.Prediction;
 import org.meltbook.units.Quantity;
 
 /**
- * Several laws fitted to one flow curve, side by side. It shows how far each misses the points; it does not choose,
- * since a law with more parameters always comes closer.
+ * Several laws fitted to one flow curve, side by side: how far each misses the points, and how well the points support
+ * each after its parameters are paid for.
  */
 public final class LawSurvey implements Exhibit {
     private final FlowCurve curve;
     private final List<ViscosityFit> fits;
+    private final Optional<Comparison> comparison;
 
     private LawSurvey(FlowCurve curve, List<ViscosityFit> fits) {
         this.curve = curve;
         this.fits = List.copyOf(fits);
+        Map<String, Fit> named = new LinkedHashMap<>();
+        fits.forEach(fit -> named.put(fit.law().family().name(), fit.fit()));
+        this.comparison = named.size() > 1 ? Optional.of(Comparison.of(named)) : Optional.empty();
     }
 
     /** Every law of the catalogue on the curve. */
@@ -55,6 +64,11 @@ public final class LawSurvey implements Exhibit {
         return fits;
     }
 
+    /** The laws ranked by Akaike's criterion; empty if there is one law only. */
+    public Optional<Comparison> comparison() {
+        return comparison;
+    }
+
     @Override
     public String headline() {
         List<String> misses = fits.stream()
@@ -62,7 +76,8 @@ public final class LawSurvey implements Exhibit {
                 .toList();
         String sample = curve.conditions().sample();
         return (sample.isEmpty() ? "Flow curve" : sample) + ": the points are missed (root mean square) by the "
-                + String.join(", the ", misses) + ".";
+                + String.join(", the ", misses)
+                + comparison.map(ranking -> ". " + ranking.sentence()).orElse(".");
     }
 
     private static String miss(ViscosityFit fit) {
@@ -71,7 +86,13 @@ public final class LawSurvey implements Exhibit {
 
     @Override
     public List<Rows> rows() {
-        return List.of(Rows.titled("Laws side by side")
+        List<Rows> all = new ArrayList<>(List.of(sideBySide()));
+        comparison.ifPresent(ranking -> all.addAll(ranking.rows()));
+        return List.copyOf(all);
+    }
+
+    private Rows sideBySide() {
+        return Rows.titled("Laws side by side")
                 .text("law", fits.stream().map(fit -> fit.law().family().name()).toList())
                 .text(
                         "free parameters",
@@ -86,7 +107,7 @@ public final class LawSurvey implements Exhibit {
                         "zero-shear viscosity [Pa·s]",
                         fits.stream().map(LawSurvey::plateau).toList())
                 .note("A law with more parameters always comes closer; that alone is no reason to prefer it.")
-                .build());
+                .build();
     }
 
     private static String freeParameters(ViscosityFit fit) {
@@ -119,6 +140,11 @@ public final class LawSurvey implements Exhibit {
         return List.of(figure.marks("measured", usable.x().values(), usable.y().values())
                 .caption("Each line is drawn where it was fitted.")
                 .build());
+    }
+
+    @Override
+    public List<String> cautions() {
+        return comparison.map(Comparison::cautions).orElse(List.of());
     }
 
     @Override

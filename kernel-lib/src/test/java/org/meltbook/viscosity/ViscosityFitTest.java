@@ -9,6 +9,8 @@ import java.util.ArrayList;
 import java.util.Collections;
 import java.util.List;
 import java.util.Optional;
+import java.util.Set;
+import java.util.stream.Collectors;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
@@ -18,6 +20,7 @@ import org.meltbook.base.NumberText;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 import org.meltbook.base.Rows.TextColumn;
+import org.meltbook.fit.Comparison;
 import org.meltbook.fit.Estimate;
 import org.meltbook.fit.Fit;
 import org.meltbook.measure.Conditions;
@@ -110,6 +113,23 @@ class ViscosityFitTest {
         assertTrue(survey.fits().get(1).fit().rootMeanSquare()
                 < survey.fits().get(0).fit().rootMeanSquare());
         assertThrows(RangeException.class, () -> LawSurvey.of(silicone("0.0000"), List.of(), Progress.QUIET));
+    }
+
+    @Test
+    void a_survey_ranks_the_laws_and_says_which_the_points_support() {
+        LawSurvey survey = LawSurvey.of(silicone("0.0000"));
+        Comparison comparison = survey.comparison().orElseThrow();
+        assertTrue(survey.headline().endsWith(comparison.sentence().substring(1)), survey.headline());
+        assertEquals(comparison.rows().get(0), survey.rows().get(1));
+        // a plateau that falls off: laws without one or without the fall cannot hold against those with both
+        assertEquals(
+                Set.of(Cross.FAMILY.name(), CarreauYasuda.FAMILY.name()),
+                comparison.ranked().subList(0, 2).stream()
+                        .map(Comparison.Entry::name)
+                        .collect(Collectors.toSet()));
+        assertTrue(LawSurvey.of(silicone("0.0000"), List.of(Cross.FAMILY), Progress.QUIET)
+                .comparison()
+                .isEmpty());
     }
 
     @Test
