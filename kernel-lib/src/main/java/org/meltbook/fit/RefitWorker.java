@@ -96,7 +96,7 @@ final class RefitWorker implements Parallel.Work {
     /** Fills in the standard errors for unit variance: the lengths of the rows of the inverse of R, where QR = J. */
     private void inverseLengths(int n) {
         int rows = workspace.points();
-        Reflections.reduce(jacobian, rows, n, residuals);
+        Reflections.reduce(jacobian, rows, n, residuals, new double[n]);
         for (int j = 0; j < n; j++) {
             double square = 0;
             double[] column = new double[n]; // solution of Rᵀ z = unit vector j
