@@ -77,15 +77,10 @@ final class DampedStep {
             weigh(loss);
         }
         for (int j = 0; j < n; j++) {
-            double square = 0;
-            double product = 0;
-            for (int i = j * rows; i < (j + 1) * rows; i++) {
-                square += matrix[i] * matrix[i];
-                product += matrix[i] * right[i - j * rows];
-            }
+            double square = Sums.products(matrix, j * rows, matrix, j * rows, rows);
             lengths[j] = Math.sqrt(square);
             scales[j] = Math.max(KEPT * scales[j], lengths[j]);
-            slope[j] = product;
+            slope[j] = Sums.products(matrix, j * rows, right, 0, rows);
         }
         Reflections.reduce(matrix, rows, n, right, heads);
         for (int j = 0; j < n; j++) {
@@ -177,7 +172,9 @@ final class DampedStep {
                 small[c * height + n + c] = linear[j] ? 0 : root * scales[j] / lengths[j];
             }
         }
-        Reflections.reduce(small, height, m, smallRight, smallHeads);
+        if (root > 0 || m < n) {
+            Reflections.reduce(small, height, m, smallRight, smallHeads);
+        }
         for (int c = m - 1; c >= 0; c--) {
             double sum = smallRight[c];
             for (int d = c + 1; d < m; d++) {

@@ -14,10 +14,7 @@ final class Reflections {
     static void reduce(double[] matrix, int rows, int columns, double[] right, double[] heads) {
         for (int k = 0; k < columns; k++) {
             int base = k * rows;
-            double square = 0;
-            for (int i = k; i < rows; i++) {
-                square += matrix[base + i] * matrix[base + i];
-            }
+            double square = Sums.products(matrix, base + k, matrix, base + k, rows - k);
             heads[k] = 0;
             if (square == 0) {
                 continue;
@@ -49,11 +46,7 @@ final class Reflections {
     }
 
     private static void turn(double[] column, int at, double[] axis, int base, int from, int to, double factor) {
-        double product = 0;
-        for (int i = from; i < to; i++) {
-            product += axis[base + i] * column[at + i];
-        }
-        product *= factor;
+        double product = factor * Sums.products(axis, base + from, column, at + from, to - from);
         for (int i = from; i < to; i++) {
             column[at + i] += product * axis[base + i];
         }

@@ -1,6 +1,5 @@
 package org.meltbook.fit;
 
-import java.util.Arrays;
 import org.meltbook.base.Progress;
 import org.meltbook.base.RangeException;
 
@@ -23,8 +22,14 @@ public final class Solver {
     private static final int MOST_EVALUATIONS = 20_000;
     private static final double FIRST_DAMPING = 1e-3;
     private static final double LEAST_DAMPING = 1e-16;
-    /** Share of the sum of squares that the best step would still gain: a hundred-millionth of a standard error. */
-    private static final double LEFT_TO_GAIN = 1e-18;
+    /** Share of the sum of squares to gain by the last step: less is lost in rounding. */
+    private static final double LEFT_TO_GAIN = 1e-16;
+    /** Share of it left after the last step: the optimum is less than a hundred-millionth of a standard error away. */
+    private static final double LEFT_AFTER = 1e-17;
+    /** Share to gain below which the steps shrink at the rate at which they shrank last. */
+    private static final double CLOSE = 1e-9;
+    /** By how much gained and predicted may differ before the model counts as bent. */
+    private static final double FAR_OFF = 0.1;
 
     /** Along what share of a step the curve of the model is looked at. */
     private static final double PROBE = 0.1;
@@ -48,9 +53,17 @@ public final class Solver {
     private double[] there;
     private double[] residuals;
     private double[] trialResiduals;
-    private final double[] jacobian;
+    private double[] jacobian;
+    private double[] trialJacobian;
     private final double[] second;
+    private final boolean plain;
     private double cost;
+    private double damping;
+    private double growth;
+    private double shareBefore; // of the sum of squares, to gain by the best step at the place before
+    private boolean bending; // whether the next step is bent along the curve of the model
+    private boolean sure; // whether the next trial will most likely be accepted
+    private boolean linearised; // whether the last trial brought its derivatives
     private int evaluations;
 
     private Solver(Problem problem) {
@@ -64,6 +77,8 @@ public final class Solver {
         this.residuals = new double[workspace.points()];
         this.trialResiduals = new double[workspace.points()];
         this.jacobian = new double[workspace.points() * coordinates];
+        this.trialJacobian = new double[jacobian.length];
+        this.plain = problem.loss().plain();
         this.second = new double[workspace.points()];
         workspace.inward(problem.start().toArray(), here);
     }
@@ -120,62 +135,98 @@ public final class Solver {
      * @throws RangeException if the model has no value at the start
      */
     public Fit.Status solve(Progress progress) {
+        begin();
+        while (evaluations < MOST_EVALUATIONS) {
+            progress.at(evaluations, 0, "fit");
+            double leftToGain = step.solve(here, held, 0);
+            if (last(leftToGain)) {
+                move();
+                swapPlaces();
+                return Fit.Status.CONVERGED;
+            }
+            boolean settled = step.longest(here) <= SETTLED;
+            double predicted = step.solve(here, held, damping);
+            if (bending && predicted > WORTH_BENDING * cost && !bend()) {
+                shorten();
+                continue;
+            }
+            move();
+            double gained = cost - trial();
+            if (gained > 0) {
+                accept(gained, predicted);
+            } else if (settled || predicted <= noise()) {
+                return Fit.Status.CONVERGED; // what is left to gain is below rounding
+            } else if (step.longest(here) <= SMALL) {
+                return Fit.Status.STALLED;
+            } else {
+                shorten();
+                bending = plain;
+            }
+        }
+        return Fit.Status.EVALUATIONS_SPENT;
+    }
+
+    private void begin() {
         evaluations = 0;
+        damping = FIRST_DAMPING;
+        growth = 2;
+        shareBefore = 0;
+        bending = plain;
         step.reset();
-        double damping = FIRST_DAMPING;
-        double growth = 2;
-        boolean bending = workspace.problem().loss().plain();
         project(here);
         if (!linearise()) {
             throw new RangeException(workspace.problem().name() + " has no finite value or derivative at the start "
                     + "of the fit, " + workspace.problem().start());
         }
-        while (evaluations < MOST_EVALUATIONS) {
-            progress.at(evaluations, 0, "fit");
-            double leftToGain = step.solve(here, held, 0);
-            if (Math.abs(leftToGain) <= LEFT_TO_GAIN * cost) {
-                return Fit.Status.CONVERGED;
-            }
-            boolean settled = step.longest(here) <= SETTLED;
-            double predicted = step.solve(here, held, damping);
-            if (bending && predicted > WORTH_BENDING * cost && !bend(damping)) {
-                damping *= growth;
-                growth *= 2;
-                continue;
-            }
-            for (int j = 0; j < coordinates; j++) {
-                there[j] = here[j] + step.at(j);
-            }
-            project(there);
-            double trial = trial();
-            double gained = cost - trial;
-            if (!(gained > 0)) {
-                if (settled || predicted <= noise()) {
-                    return Fit.Status.CONVERGED; // what is left to gain is below rounding
-                }
-                if (step.longest(here) <= SMALL) {
-                    return Fit.Status.STALLED;
-                }
-                damping *= growth;
-                growth *= 2;
-                bending = workspace.problem().loss().plain();
-                continue;
-            }
-            bending = workspace.problem().loss().plain() && Math.abs(gained / predicted - 1) > 0.1;
-            double quality = 2 * gained / predicted - 1;
-            damping = Math.max(LEAST_DAMPING, damping * Math.max(1.0 / 3, 1 - quality * quality * quality));
-            growth = 2;
-            double[] left = here;
-            here = there;
-            there = left;
-            if (!linearise()) {
-                there = here;
-                here = left;
-                linearise();
-                damping *= 10;
-            }
+    }
+
+    /** Whether the best step, which would gain so much, needs no trial and no other after it. */
+    private boolean last(double leftToGain) {
+        double share = Math.abs(leftToGain) / cost;
+        double rate = Math.min(1, share / shareBefore);
+        shareBefore = share;
+        return cost == 0 || share <= LEFT_TO_GAIN || share <= CLOSE && share * rate <= LEFT_AFTER;
+    }
+
+    private void move() {
+        for (int j = 0; j < coordinates; j++) {
+            there[j] = here[j] + step.at(j);
         }
-        return Fit.Status.EVALUATIONS_SPENT;
+        project(there);
+    }
+
+    private void shorten() {
+        damping *= growth;
+        growth *= 2;
+    }
+
+    private void accept(double gained, double predicted) {
+        double quality = 2 * gained / predicted - 1;
+        damping = Math.max(LEAST_DAMPING, damping * Math.max(1.0 / 3, 1 - quality * quality * quality));
+        growth = 2;
+        bending = plain && Math.abs(gained / predicted - 1) > FAR_OFF;
+        sure = Math.abs(gained / predicted - 1) <= FAR_OFF;
+        swapPlaces();
+        if (linearised) {
+            double[] left = residuals;
+            residuals = trialResiduals;
+            trialResiduals = left;
+            left = jacobian;
+            jacobian = trialJacobian;
+            trialJacobian = left;
+            cost -= gained;
+            step.take(residuals, jacobian);
+        } else if (!linearise()) {
+            swapPlaces(); // a value but no derivative there: back, and shorter
+            linearise();
+            damping *= 10;
+        }
+    }
+
+    private void swapPlaces() {
+        double[] left = here;
+        here = there;
+        there = left;
     }
 
     /**
@@ -183,7 +234,7 @@ public final class Solver {
      *
      * @return false if the model bends so much that the step should be shorter
      */
-    private boolean bend(double damping) {
+    private boolean bend() {
         evaluations++;
         for (int j = 0; j < coordinates; j++) {
             there[j] = here[j] + PROBE * step.at(j);
@@ -215,20 +266,20 @@ public final class Solver {
         }
     }
 
+    /** What is to be minimised at the trial; with the derivatives at once if they will most likely be needed. */
     private double trial() {
         evaluations++;
-        return workspace.residuals(there, trialResiduals) ? workspace.cost(trialResiduals) : Double.NaN;
+        linearised = sure;
+        boolean usable = sure
+                ? workspace.linearise(there, trialResiduals, trialJacobian)
+                : workspace.residuals(there, trialResiduals);
+        sure = false;
+        return usable ? workspace.cost(trialResiduals) : Double.NaN;
     }
 
     /** By how much rounding may change the sum of squares. */
     private double noise() {
         double size = workspace.size();
         return 4 * ROUNDING * size * (Math.sqrt(cost) + ROUNDING * size);
-    }
-
-    /** The arrays, for tests that look inside. */
-    @Override
-    public String toString() {
-        return "solver of " + workspace.problem().name() + " at " + Arrays.toString(here);
     }
 }

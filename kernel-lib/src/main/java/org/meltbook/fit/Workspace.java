@@ -28,7 +28,7 @@ public final class Workspace {
     private final Knot[] knots;
     private final double[] measured;
     private final double[] counts;
-    private final double[] divisors; // deviation over root of count
+    private final double[] weights; // root of count over deviation
 
     private Workspace(Problem problem) {
         this.problem = problem;
@@ -53,9 +53,9 @@ public final class Workspace {
             knots[p] = tie.isPresent() ? new Knot(problem, tie.get()) : Knot.NONE;
         }
         this.counts = new double[points];
-        this.divisors = new double[points];
+        this.weights = new double[points];
         Arrays.fill(counts, 1);
-        divide();
+        weigh();
     }
 
     /** A workspace for the problem, with its data. */
@@ -95,7 +95,7 @@ public final class Workspace {
      */
     public void measured(double[] all) {
         System.arraycopy(all, 0, measured, 0, points);
-        divide();
+        weigh();
     }
 
     /**
@@ -106,14 +106,14 @@ public final class Workspace {
      */
     public void counting(double[] each) {
         System.arraycopy(each, 0, counts, 0, points);
-        divide();
+        weigh();
     }
 
-    private void divide() {
+    private void weigh() {
         for (Part part : parts) {
             for (int i = 0; i < part.x.length; i++) {
                 int point = part.offset + i;
-                divisors[point] = part.set.deviation(i, measured[point]) / Math.sqrt(counts[point]);
+                weights[point] = Math.sqrt(counts[point]) / part.set.deviation(i, measured[point]);
             }
         }
     }
@@ -161,7 +161,7 @@ public final class Workspace {
             part.set.model().values(part.x, part.own, part.value);
             misfits(part, residuals);
         }
-        return finite(residuals, points);
+        return Sums.finite(residuals, points);
     }
 
     /**
@@ -182,11 +182,12 @@ public final class Workspace {
             part.take(values);
             part.set.model().curve(part.x, part.own, part.value, part.derivative);
             misfits(part, residuals);
+            part.slopes(weights);
             for (int k = 0; k < part.place.length; k++) {
                 chain(part, k, jacobian);
             }
         }
-        return finite(residuals, points) && finite(jacobian, points * free.length);
+        return Sums.finite(residuals, points) && Sums.finite(jacobian, points * free.length);
     }
 
     private void misfits(Part part, double[] residuals) {
@@ -194,7 +195,7 @@ public final class Workspace {
         for (int i = 0; i < part.x.length; i++) {
             int point = part.offset + i;
             double misfit = logarithm ? Math.log(part.value[i] / measured[point]) : part.value[i] - measured[point];
-            residuals[point] = divisors[point] < Double.POSITIVE_INFINITY ? misfit / divisors[point] : 0;
+            residuals[point] = misfit * weights[point];
         }
     }
 
@@ -217,10 +218,8 @@ public final class Workspace {
     private void add(Part part, int k, double stretch, double[] jacobian, int j) {
         int n = part.x.length;
         int from = j * points + part.offset;
-        boolean logarithm = part.set.weighting() == Weighting.LOGARITHMIC;
         for (int i = 0; i < n; i++) {
-            double divisor = logarithm ? divisors[part.offset + i] * part.value[i] : divisors[part.offset + i];
-            jacobian[from + i] += part.derivative[k * n + i] * stretch / divisor;
+            jacobian[from + i] += part.derivative[k * n + i] * (part.slope[i] * stretch);
         }
     }
 
@@ -285,7 +284,7 @@ public final class Workspace {
         for (Part part : parts) {
             boolean logarithm = part.set.weighting() == Weighting.LOGARITHMIC;
             for (int i = part.offset; i < part.offset + part.x.length; i++) {
-                double share = (logarithm ? 1 : measured[i]) / divisors[i];
+                double share = (logarithm ? 1 : measured[i]) * weights[i];
                 sum += share * share;
             }
         }
@@ -295,15 +294,12 @@ public final class Workspace {
     /** What is minimised: the sum of the squared residuals, or of what the loss makes of them. */
     public double cost(double[] residuals) {
         Loss loss = problem.loss();
-        double sum = 0;
         if (loss.plain()) {
-            for (int i = 0; i < points; i++) {
-                sum += residuals[i] * residuals[i];
-            }
-        } else {
-            for (int i = 0; i < points; i++) {
-                sum += loss.cost(residuals[i]);
-            }
+            return Sums.products(residuals, 0, residuals, 0, points);
+        }
+        double sum = 0;
+        for (int i = 0; i < points; i++) {
+            sum += loss.cost(residuals[i]);
         }
         return sum;
     }
@@ -317,14 +313,6 @@ public final class Workspace {
         return true;
     }
 
-    private static boolean finite(double[] numbers, int count) {
-        double sum = 0;
-        for (int i = 0; i < count; i++) {
-            sum += 0 * numbers[i];
-        }
-        return sum == 0;
-    }
-
     /** One data set with room for its model's numbers. */
     private static final class Part {
         private final DataSet set;
@@ -334,6 +322,7 @@ public final class Workspace {
         private final double[] own;
         private final double[] value;
         private final double[] derivative;
+        private final double[] slope; // of each residual to the model's value
 
         private Part(Problem problem, int d) {
             this.set = problem.dataSets().get(d);
@@ -345,7 +334,15 @@ public final class Workspace {
                     .toArray();
             this.own = new double[place.length];
             this.value = new double[x.length];
+            this.slope = new double[x.length];
             this.derivative = new double[x.length * place.length];
+        }
+
+        private void slopes(double[] weights) {
+            boolean logarithm = set.weighting() == Weighting.LOGARITHMIC;
+            for (int i = 0; i < x.length; i++) {
+                slope[i] = logarithm ? weights[offset + i] / value[i] : weights[offset + i];
+            }
         }
 
         private void take(double[] all) {
