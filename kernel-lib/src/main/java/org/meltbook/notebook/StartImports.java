@@ -14,6 +14,8 @@ final class StartImports {
             "import org.meltbook.figure.*;",
             "import org.meltbook.measure.*;",
             "import org.meltbook.intake.*;",
+            "import org.meltbook.numeric.*;",
+            "import org.meltbook.fit.*;",
             "import org.meltbook.viscosity.*;",
             "import org.meltbook.spectrum.*;",
             "import org.meltbook.flow.*;",
