@@ -62,6 +62,15 @@ public final class NumberText {
         return (plain ? both : "(" + both + ")×10" + raised(exponent)) + tail;
     }
 
+    /** The number with a fixed count of digits behind the point: {@code −0.58}; NaN is {@code –}. */
+    public static String withDecimals(double value, int decimals) {
+        if (!Double.isFinite(value)) {
+            return of(value);
+        }
+        BigDecimal rounded = new BigDecimal(value).setScale(decimals, RoundingMode.HALF_EVEN);
+        return minus(rounded.toPlainString());
+    }
+
     private static int exponentOf(double value) {
         BigDecimal rounded = new BigDecimal(value).round(new MathContext(2, RoundingMode.HALF_EVEN));
         return rounded.precision() - rounded.scale() - 1;

@@ -55,7 +55,8 @@ public final class Rows {
                             ? new NumberColumn(
                                     numbers.heading(),
                                     numbers.unit(),
-                                    numbers.values().pick(places))
+                                    numbers.values().pick(places),
+                                    numbers.places())
                             : new TextColumn(
                                     column.heading(),
                                     ((TextColumn) column).values().subList(0, places.length)));
@@ -146,8 +147,12 @@ public final class Rows {
      * @param heading what the numbers are
      * @param unit    their unit as text; blank or {@code 1} if they have none
      * @param values  one number a row, NaN where there is none
+     * @param places  digits shown behind the point, or {@link #SIGNIFICANT}
      */
-    public record NumberColumn(String heading, String unit, Doubles values) implements Column {
+    public record NumberColumn(String heading, String unit, Doubles values, int places) implements Column {
+        /** As {@code places}: four significant digits, wherever the point stands. */
+        public static final int SIGNIFICANT = -1;
+
         @Override
         public int size() {
             return values.size();
@@ -155,7 +160,8 @@ public final class Rows {
 
         @Override
         public String text(int row) {
-            return NumberText.of(values.at(row));
+            double value = values.at(row);
+            return places == SIGNIFICANT ? NumberText.of(value) : NumberText.withDecimals(value, places);
         }
 
         @Override
@@ -209,12 +215,20 @@ public final class Rows {
 
         /** Adds a column of numbers that share a unit. */
         public Builder numbers(String heading, String unit, Doubles values) {
-            return add(new NumberColumn(heading, unit, values));
+            return add(new NumberColumn(heading, unit, values, NumberColumn.SIGNIFICANT));
         }
 
         /** Adds a column of numbers that share a unit. */
         public Builder numbers(String heading, String unit, double... values) {
             return numbers(heading, unit, Doubles.of(values));
+        }
+
+        /**
+         * Adds a column of numbers shown with two digits behind the point: differences, such as residuals, whose smaller
+         * digits are only those of the arithmetic.
+         */
+        public Builder differences(String heading, String unit, Doubles values) {
+            return add(new NumberColumn(heading, unit, values, 2));
         }
 
         /** Adds a remark below the table. */

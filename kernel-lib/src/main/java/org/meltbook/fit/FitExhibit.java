@@ -92,7 +92,7 @@ final class FitExhibit {
                 .numbers(set.xAxis().label(), set.xAxis().unit(), set.x())
                 .numbers("measured", set.yAxis().unit(), set.y())
                 .numbers("model", set.yAxis().unit(), fit.predictions(d))
-                .numbers(axis.label(), axis.unit(), shownResiduals(d))
+                .differences(axis.label(), axis.unit(), shownResiduals(d))
                 .build();
     }
 

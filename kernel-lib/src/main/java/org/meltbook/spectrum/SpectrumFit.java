@@ -184,7 +184,7 @@ public final class SpectrumFit implements Exhibit {
                 .numbers("ω", "rad/s", curve.x().values())
                 .numbers("measured " + symbol, "Pa", curve.y().values())
                 .numbers("fitted " + symbol, "Pa", curve.x().values().map(model))
-                .numbers("fitted / measured − 1", "%", residuals.map(r -> 100 * r))
+                .differences("fitted / measured − 1", "%", residuals.map(r -> 100 * r))
                 .build();
     }
 

@@ -6,6 +6,7 @@ import static org.junit.jupiter.api.Assertions.assertTrue;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.stream.IntStream;
 import org.junit.jupiter.api.Test;
 
 class RowsTest {
@@ -54,6 +55,18 @@ class RowsTest {
         assertEquals(Rows.titled("x").text("n", List.of("a")).build(), rows);
         assertEquals(Rows.titled("x").text("n", List.of("a")).build().hashCode(), rows.hashCode());
         assertThrows(UnsupportedOperationException.class, () -> rows.columns().clear());
+    }
+
+    @Test
+    void differences_show_two_digits_behind_the_point_and_keep_them_all() {
+        Rows rows = Rows.titled("x")
+                .differences("off", "%", Doubles.of(2.6197, -0.5786, 2.894e-4, -1e-9, Double.NaN))
+                .build();
+        Rows.Column column = rows.columns().get(0);
+        assertEquals(
+                List.of("2.62", "−0.58", "0.00", "0.00", "–"),
+                IntStream.range(0, 5).mapToObj(column::text).toList());
+        assertEquals(2.894e-4, ((Rows.NumberColumn) column).values().at(2));
     }
 
     @Test
