@@ -135,6 +135,20 @@ public final class Solver {
      * @throws RangeException if the model has no value at the start
      */
     public Fit.Status solve(Progress progress) {
+        evaluations = 0;
+        Loss loss = workspace.problem().loss();
+        if (!loss.leading().equals(loss)) {
+            workspace.loss(loss.leading());
+            try {
+                descend(progress);
+            } finally {
+                workspace.loss(loss);
+            }
+        }
+        return descend(progress);
+    }
+
+    private Fit.Status descend(Progress progress) {
         begin();
         while (evaluations < MOST_EVALUATIONS) {
             progress.at(evaluations, 0, "fit");
@@ -167,7 +181,6 @@ public final class Solver {
     }
 
     private void begin() {
-        evaluations = 0;
         damping = FIRST_DAMPING;
         growth = 2;
         shareBefore = 0;
