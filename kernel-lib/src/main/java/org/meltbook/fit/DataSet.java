@@ -168,8 +168,8 @@ public final class DataSet {
                         + "): expected finite numbers");
             }
             if (weighting == Weighting.RELATIVE && y.at(i) == 0) {
-                throw new RangeException("point " + (i + 1) + " of the fit is zero: relative errors need values "
-                        + "other than zero");
+                throw new RangeException(
+                        "point " + (i + 1) + " of the fit is zero: relative errors need values " + "other than zero");
             }
             if (weighting == Weighting.LOGARITHMIC && !(y.at(i) > 0)) {
                 throw new RangeException("point " + (i + 1) + " of the fit is " + y.at(i)

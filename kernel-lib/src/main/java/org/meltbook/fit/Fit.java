@@ -291,7 +291,8 @@ public final class Fit implements Exhibit {
             return reducedChiSquare();
         }
         int n = residuals.size();
-        double pull = residuals.stream().map(r -> r * loss.weight(r)).map(p -> p * p).sum();
+        double pull =
+                residuals.stream().map(r -> r * loss.weight(r)).map(p -> p * p).sum();
         double mean = residuals.stream().map(loss::curvature).sum() / n;
         double square = residuals.stream().map(loss::curvature).map(c -> c * c).sum() / n;
         double correction = 1 + covariance.estimated() * (square / (mean * mean) - 1) / n;

@@ -97,7 +97,9 @@ final class FitExhibit {
     }
 
     private String title(DataSet set) {
-        return problem.dataSets().size() == 1 ? set.model().name() : set.name() + ", " + set.model().name();
+        return problem.dataSets().size() == 1
+                ? set.model().name()
+                : set.name() + ", " + set.model().name();
     }
 
     private static Axis residualAxis(DataSet set) {

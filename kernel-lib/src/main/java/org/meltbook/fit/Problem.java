@@ -55,6 +55,16 @@ public final class Problem {
         return solver.fit(solver.solve(progress));
     }
 
+    /**
+     * Solves the problem from many starts and gives the best fit; {@link MultiStart} tells more.
+     *
+     * @param starts how many, the problem's own included
+     * @param seed   where the other starts are drawn from
+     */
+    public Fit solveFromMany(int starts, long seed) {
+        return MultiStart.of(this, starts, seed, Progress.QUIET).best();
+    }
+
     /** The data sets, whose points stand one behind the other in residuals and Jacobian. */
     public List<DataSet> dataSets() {
         return dataSets;
@@ -100,10 +110,8 @@ public final class Problem {
 
     /** Weighting of each data set, loss and error model in one sentence, as every report shows it. */
     public String errorWords() {
-        List<String> kinds = dataSets.stream()
-                .map(set -> set.weighting().words())
-                .distinct()
-                .toList();
+        List<String> kinds =
+                dataSets.stream().map(set -> set.weighting().words()).distinct().toList();
         String weighting = kinds.size() == 1
                 ? kinds.get(0)
                 : dataSets.stream()
@@ -192,7 +200,8 @@ public final class Problem {
         Builder builder = new Builder(this);
         for (int d = 0; d < dataSets.size(); d++) {
             int first = offset(d);
-            int[] places = IntStream.range(first, first + dataSets.get(d).size()).toArray();
+            int[] places =
+                    IntStream.range(first, first + dataSets.get(d).size()).toArray();
             builder.dataSets.set(d, dataSets.get(d).measured(values.pick(places)));
         }
         return builder.from(start.toArray());

@@ -42,7 +42,8 @@ final class ProblemCheck {
     }
 
     static void ties(List<Parameter> parameters, List<Tie> ties) {
-        Set<String> names = new HashSet<>(parameters.stream().map(Parameter::name).toList());
+        Set<String> names =
+                new HashSet<>(parameters.stream().map(Parameter::name).toList());
         Set<String> tied = new HashSet<>();
         for (Tie tie : ties) {
             if (!names.contains(tie.name()) || !names.containsAll(tie.sources())) {
@@ -83,20 +84,23 @@ final class ProblemCheck {
 
     static Doubles start(List<Parameter> parameters, List<Tie> ties, double[] values) {
         if (values.length != parameters.size()) {
-            throw new RangeException("there are " + parameters.size() + " parameters, the start gives " + values.length
-                    + " values");
+            throw new RangeException(
+                    "there are " + parameters.size() + " parameters, the start gives " + values.length + " values");
         }
         double[] start = new double[values.length];
         for (int i = 0; i < start.length; i++) {
             Parameter parameter = parameters.get(i);
             if (tie(ties, parameter).isEmpty()) {
-                start[i] = parameter.isFree() ? parameter.check(values[i]) : parameter.fixed().getAsDouble();
+                start[i] = parameter.isFree()
+                        ? parameter.check(values[i])
+                        : parameter.fixed().getAsDouble();
             }
         }
         List<String> names = parameters.stream().map(Parameter::name).toList();
         for (Tie tie : ties) {
-            double[] sources =
-                    tie.sources().stream().mapToDouble(s -> start[names.indexOf(s)]).toArray();
+            double[] sources = tie.sources().stream()
+                    .mapToDouble(s -> start[names.indexOf(s)])
+                    .toArray();
             int place = names.indexOf(tie.name());
             start[place] = parameters.get(place).check(tie.value(sources));
         }

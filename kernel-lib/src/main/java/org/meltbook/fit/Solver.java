@@ -119,6 +119,11 @@ public final class Solver {
         return cost;
     }
 
+    /** Whether the model has a value and derivatives where the next solution starts. */
+    public boolean usable() {
+        return workspace.linearise(here, trialResiduals, trialJacobian);
+    }
+
     /** How often the model was tried in the last solution. */
     public int evaluations() {
         return evaluations;
@@ -295,5 +300,4 @@ public final class Solver {
         double size = workspace.size();
         return 4 * ROUNDING * size * (Math.sqrt(cost) + ROUNDING * size);
     }
-
 }

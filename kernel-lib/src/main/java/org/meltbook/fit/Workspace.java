@@ -263,9 +263,10 @@ public final class Workspace {
     private boolean linear(int j) {
         String name = parameters[free[j]].name();
         for (Part part : parts) {
-            boolean there = part.set.model().parameters().stream().anyMatch(p -> p.name().equals(name));
-            boolean linear = part.set.model().linearIn().contains(name)
-                    && part.set.weighting() != Weighting.LOGARITHMIC;
+            boolean there = part.set.model().parameters().stream()
+                    .anyMatch(p -> p.name().equals(name));
+            boolean linear =
+                    part.set.model().linearIn().contains(name) && part.set.weighting() != Weighting.LOGARITHMIC;
             if (there && !linear) {
                 return false;
             }

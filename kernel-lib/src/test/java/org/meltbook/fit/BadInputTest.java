@@ -34,12 +34,16 @@ class BadInputTest {
 
     @Test
     void fewer_points_than_parameters() {
-        refused("found 1 points", () -> Problem.of(line(A, B)).data(X.pick(0), Y.pick(0)).from(0, 0));
+        refused(
+                "found 1 points",
+                () -> Problem.of(line(A, B)).data(X.pick(0), Y.pick(0)).from(0, 0));
     }
 
     @Test
     void all_x_identical() {
-        refused("at 1 different places", () -> Problem.of(line(A, B)).data(X.map(x -> 2), Y).from(0, 0));
+        refused(
+                "at 1 different places",
+                () -> Problem.of(line(A, B)).data(X.map(x -> 2), Y).from(0, 0));
     }
 
     @ParameterizedTest
@@ -60,8 +64,8 @@ class BadInputTest {
                 .data(X, Y)
                 .deviations(X.map(x -> x > 5 ? bad : 0.1))
                 .from(0, 0));
-        assertThrows(RangeException.class, () -> DataSet.of("set", line(A, B), X, Y)
-                .absolute(bad));
+        assertThrows(
+                RangeException.class, () -> DataSet.of("set", line(A, B), X, Y).absolute(bad));
     }
 
     @Test
@@ -72,9 +76,9 @@ class BadInputTest {
 
     @Test
     void a_start_outside_its_bounds() {
-        refused("outside its bounds", () -> Problem.of(line(A.within(0, 1), B))
-                .data(X, Y)
-                .from(2, 0));
+        refused(
+                "outside its bounds",
+                () -> Problem.of(line(A.within(0, 1), B)).data(X, Y).from(2, 0));
     }
 
     @Test
@@ -102,8 +106,7 @@ class BadInputTest {
     void an_optimum_that_lies_where_the_model_has_no_value_is_not_called_reached() {
         Model cut = Model.of("cut", List.of(A), (x, p) -> p[0] > 2 ? p[0] * x : Double.NaN);
         Fit fit = assertTimeoutPreemptively(
-                Duration.ofSeconds(10),
-                () -> Problem.of(cut).data(X, X).from(3).solve());
+                Duration.ofSeconds(10), () -> Problem.of(cut).data(X, X).from(3).solve());
         assertEquals(Fit.Status.STALLED, fit.status());
         assertTrue(fit.cautions().get(0).contains("without converging"));
     }
@@ -121,9 +124,9 @@ class BadInputTest {
 
     @Test
     void parameter_names_used_twice() {
-        refused("uses the parameter name a twice", () -> Problem.of(line(A, A))
-                .data(X, Y)
-                .from(0, 0));
+        refused(
+                "uses the parameter name a twice",
+                () -> Problem.of(line(A, A)).data(X, Y).from(0, 0));
     }
 
     @Test

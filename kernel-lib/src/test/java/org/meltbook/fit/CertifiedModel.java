@@ -19,9 +19,8 @@ enum CertifiedModel {
     Misra1d((x, b) -> b[0].multiply(b[1]).multiply(x).divide(b[1].multiply(x).add(1))),
     Chwirut1((x, b) -> decay(b[0], x).divide(b[2].multiply(x).add(b[1]))),
     Chwirut2(Chwirut1.formula),
-    Lanczos1((x, b) -> b[0].multiply(decay(b[1], x))
-            .add(b[2].multiply(decay(b[3], x)))
-            .add(b[4].multiply(decay(b[5], x)))),
+    Lanczos1((x, b) ->
+            b[0].multiply(decay(b[1], x)).add(b[2].multiply(decay(b[3], x))).add(b[4].multiply(decay(b[5], x)))),
     Lanczos2(Lanczos1.formula),
     Lanczos3(Lanczos1.formula),
     Gauss1((x, b) -> b[0].multiply(decay(b[1], x)).add(peak(x, b, 2)).add(peak(x, b, 5))),
@@ -33,7 +32,9 @@ enum CertifiedModel {
     Thurber((x, b) -> ratio(x, b, 4)),
     /** Two variables: x is the number of the row, and the response is the logarithm of y. */
     Nelson((x, b) -> b[0]),
-    MGH09((x, b) -> b[1].multiply(x).add(x * x).multiply(b[0])
+    MGH09((x, b) -> b[1].multiply(x)
+            .add(x * x)
+            .multiply(b[0])
             .divide(b[2].multiply(x).add(x * x).add(b[3]))),
     MGH10((x, b) -> b[1].divide(b[2].add(x)).exp().multiply(b[0])),
     MGH17((x, b) -> b[0].add(b[1].multiply(decay(b[3], x))).add(b[2].multiply(decay(b[4], x)))),
@@ -47,8 +48,8 @@ enum CertifiedModel {
     Rat42((x, b) -> b[0].divide(b[1].subtract(b[2].multiply(x)).exp().add(1))),
     Rat43((x, b) -> b[0].divide(
             b[1].subtract(b[2].multiply(x)).exp().add(1).log().divide(b[3]).exp())),
-    Eckerle4((x, b) -> b[2].negate().add(x).divide(b[1]).pow(2).multiply(-0.5).exp()
-            .multiply(b[0].divide(b[1]))),
+    Eckerle4((x, b) ->
+            b[2].negate().add(x).divide(b[1]).pow(2).multiply(-0.5).exp().multiply(b[0].divide(b[1]))),
     Bennett5((x, b) -> b[1].add(x).log().divide(b[2]).negate().exp().multiply(b[0]));
 
     /** How the derivatives are found and which parameters are searched for. */
@@ -80,7 +81,14 @@ enum CertifiedModel {
     }
 
     private static DerivativeStructure peak(double x, DerivativeStructure[] b, int from) {
-        return b[from + 1].negate().add(x).divide(b[from + 2]).pow(2).negate().exp().multiply(b[from]);
+        return b[from + 1]
+                .negate()
+                .add(x)
+                .divide(b[from + 2])
+                .pow(2)
+                .negate()
+                .exp()
+                .multiply(b[from]);
     }
 
     private static DerivativeStructure wave(double x, DerivativeStructure[] b, int from) {
@@ -127,8 +135,18 @@ enum CertifiedModel {
     /** The parameters that enter linearly, as the formula shows. */
     private Set<String> linear() {
         return switch (this) {
-            case Misra1a, Misra1b, Misra1c, Misra1d, BoxBOD, MGH10, MGH09, DanWood, Rat42, Rat43, Eckerle4, Bennett5 ->
-                    Set.of("b1");
+            case Misra1a,
+                    Misra1b,
+                    Misra1c,
+                    Misra1d,
+                    BoxBOD,
+                    MGH10,
+                    MGH09,
+                    DanWood,
+                    Rat42,
+                    Rat43,
+                    Eckerle4,
+                    Bennett5 -> Set.of("b1");
             case Chwirut1, Chwirut2 -> Set.of();
             case Lanczos1, Lanczos2, Lanczos3 -> Set.of("b1", "b3", "b5");
             case Gauss1, Gauss2, Gauss3 -> Set.of("b1", "b3", "b6");

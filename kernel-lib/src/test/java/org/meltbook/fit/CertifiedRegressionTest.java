@@ -16,7 +16,8 @@ class CertifiedRegressionTest {
     @ParameterizedTest
     @EnumSource(CertifiedModel.Way.class)
     void reaches_the_certified_digits_from_both_starts(CertifiedModel.Way way) {
-        StringBuilder table = new StringBuilder("Digits that agree with the certified ones (least of all parameters), way: " + way + "\n");
+        StringBuilder table = new StringBuilder(
+                "Digits that agree with the certified ones (least of all parameters), way: " + way + "\n");
         table.append(String.format(
                 Locale.ROOT, "%-10s %5s %9s %9s %9s %s%n", "set", "start", "values", "errors", "trials", "status"));
         List<String> misses = new ArrayList<>();
@@ -28,13 +29,26 @@ class CertifiedRegressionTest {
                 double values = 11;
                 double errors = 11;
                 for (int i = 0; i < reference.values().size(); i++) {
-                    values = Math.min(values, digits(fit.values().at(order[i]), reference.values().at(i)));
-                    errors = Math.min(errors, digits(fit.estimates().get(order[i]).error(), reference.errors().at(i)));
+                    values = Math.min(
+                            values,
+                            digits(fit.values().at(order[i]), reference.values().at(i)));
+                    errors = Math.min(
+                            errors,
+                            digits(
+                                    fit.estimates().get(order[i]).error(),
+                                    reference.errors().at(i)));
                 }
                 table.append(String.format(
-                        Locale.ROOT, "%-10s %5d %9.1f %9.1f %9d %s%n",
-                        model, start + 1, values, errors, fit.evaluations(), fit.status()));
-                if (!(values >= 6 && errors >= (model == CertifiedModel.Lanczos1 ? 2.5 : 4)
+                        Locale.ROOT,
+                        "%-10s %5d %9.1f %9.1f %9d %s%n",
+                        model,
+                        start + 1,
+                        values,
+                        errors,
+                        fit.evaluations(),
+                        fit.status()));
+                if (!(values >= 6
+                        && errors >= (model == CertifiedModel.Lanczos1 ? 2.5 : 4)
                         && fit.status() == Fit.Status.CONVERGED)) {
                     misses.add(model + " from start " + (start + 1));
                 }

@@ -53,13 +53,13 @@ class JointFitTest {
     @Test
     void two_lines_with_one_slope_are_a_linear_regression() {
         Fit fit = both().from(Map.of("low", 0.0, "high", 0.0, "slope", 0.0)).solve();
-        assertArrayEquals(
-                outside().estimateRegressionParameters(), fit.values().toArray(), 1e-9);
+        assertArrayEquals(outside().estimateRegressionParameters(), fit.values().toArray(), 1e-9);
         double[] errors = outside().estimateRegressionParametersStandardErrors();
         assertEquals(errors[1], fit.standardError("slope"), 1e-9);
         assertEquals(errors[2], fit.standardError("high"), 1e-9);
         assertEquals(13, fit.degreesOfFreedom());
-        assertEquals(SECOND.at(3) + 0.5 * fit.residuals(1).at(3), fit.predictions(1).at(3), 1e-12);
+        assertEquals(
+                SECOND.at(3) + 0.5 * fit.residuals(1).at(3), fit.predictions(1).at(3), 1e-12);
     }
 
     @Test
@@ -146,8 +146,9 @@ class JointFitTest {
     @Test
     void the_plain_jacobian_is_the_scaled_one_without_the_logarithm() {
         Model power = Model.of(
-                "power", List.of(Parameter.positive("k", "k", "Pa"), Parameter.unbounded("m", "1")), (x, p) ->
-                        p[0] * Math.pow(x, p[1]));
+                "power",
+                List.of(Parameter.positive("k", "k", "Pa"), Parameter.unbounded("m", "1")),
+                (x, p) -> p[0] * Math.pow(x, p[1]));
         Fit fit = Problem.of(power).data(X, FIRST).from(1, 1).solve();
         double k = fit.values().at(0);
         for (int i = 0; i < 8; i++) {

@@ -10,7 +10,13 @@ import org.meltbook.numeric.ReferenceTable;
  * {@code reference/strd} as published: data, two starts, and results certified to 11 digits.
  */
 record StatisticalReference(
-        Doubles x, Doubles secondX, Doubles y, List<Doubles> starts, Doubles values, Doubles errors, double sumOfSquares) {
+        Doubles x,
+        Doubles secondX,
+        Doubles y,
+        List<Doubles> starts,
+        Doubles values,
+        Doubles errors,
+        double sumOfSquares) {
     static StatisticalReference of(String name) {
         List<String> lines = ReferenceTable.lines("strd/" + name + ".dat");
         List<double[]> parameters = new ArrayList<>();

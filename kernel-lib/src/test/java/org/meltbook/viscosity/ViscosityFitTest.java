@@ -198,7 +198,8 @@ class ViscosityFitTest {
     void a_law_that_lies_too_low_misses_by_a_percentage_and_not_by_a_difference_of_logarithms() {
         Doubles rates = Doubles.logSpaced(1e-3, 1e3, 30);
         ViscosityFit fit = ViscosityFit.of(curve(rates, rates.map(new Cross(9300, 0.8, 0.66)::at)), Newtonian.FAMILY);
-        double mean = CurveShape.of(rates, fit.fit().problem().only().y()).lowEnd().mean();
+        double mean =
+                CurveShape.of(rates, fit.fit().problem().only().y()).lowEnd().mean();
         double below = 1 - fit.law().zeroRateLimit() / mean;
         assertTrue(below > 0.5, "the case has to tell a share from a logarithm: " + below);
         String words = NumberText.of(100 * below, 2) + " % below";
