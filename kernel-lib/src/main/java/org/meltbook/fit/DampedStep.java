@@ -72,7 +72,7 @@ final class DampedStep {
     void take(double[] residuals, double[] jacobian) {
         System.arraycopy(jacobian, 0, matrix, 0, rows * n);
         System.arraycopy(residuals, 0, right, 0, rows);
-        Loss loss = workspace.problem().loss();
+        Loss loss = workspace.loss();
         if (!loss.plain()) {
             weigh(loss);
         }

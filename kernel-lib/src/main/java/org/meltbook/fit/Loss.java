@@ -54,6 +54,14 @@ public record Loss(Kind kind, double scale) {
         return new Loss(Kind.TUKEY, scale);
     }
 
+    /**
+     * The loss under which to look for the start of a fit: Tukey's has an optimum wherever a few points agree, so it is
+     * started at that of Huber's loss with the same efficiency.
+     */
+    Loss leading() {
+        return kind == Kind.TUKEY ? huber(scale * 1.345 / 4.685) : this;
+    }
+
     /** Whether every misfit counts by its square. */
     public boolean plain() {
         return kind == Kind.SQUARES;

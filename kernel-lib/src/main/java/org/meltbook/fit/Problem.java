@@ -55,6 +55,16 @@ public final class Problem {
         return solver.fit(solver.solve(progress));
     }
 
+    /**
+     * Solves the problem from many starts and gives the best fit; {@link MultiStart} tells more.
+     *
+     * @param starts how many, the problem's own included
+     * @param seed   where the other starts are drawn from
+     */
+    public Fit solveFromMany(int starts, long seed) {
+        return MultiStart.of(this, starts, seed, Progress.QUIET).best();
+    }
+
     /** The data sets, whose points stand one behind the other in residuals and Jacobian. */
     public List<DataSet> dataSets() {
         return dataSets;

@@ -119,6 +119,11 @@ public final class Solver {
         return cost;
     }
 
+    /** Whether the model has a value and derivatives where the next solution starts. */
+    public boolean usable() {
+        return workspace.linearise(here, trialResiduals, trialJacobian);
+    }
+
     /** How often the model was tried in the last solution. */
     public int evaluations() {
         return evaluations;
@@ -135,6 +140,20 @@ public final class Solver {
      * @throws RangeException if the model has no value at the start
      */
     public Fit.Status solve(Progress progress) {
+        evaluations = 0;
+        Loss loss = workspace.problem().loss();
+        if (!loss.leading().equals(loss)) {
+            workspace.loss(loss.leading());
+            try {
+                descend(progress);
+            } finally {
+                workspace.loss(loss);
+            }
+        }
+        return descend(progress);
+    }
+
+    private Fit.Status descend(Progress progress) {
         begin();
         while (evaluations < MOST_EVALUATIONS) {
             progress.at(evaluations, 0, "fit");
@@ -167,7 +186,6 @@ public final class Solver {
     }
 
     private void begin() {
-        evaluations = 0;
         damping = FIRST_DAMPING;
         growth = 2;
         shareBefore = 0;

@@ -26,6 +26,7 @@ public final class Workspace {
     private final double[] values;
     private final Part[] parts;
     private final Knot[] knots;
+    private Loss loss;
     private final double[] measured;
     private final double[] counts;
     private final double[] weights; // root of count over deviation
@@ -33,6 +34,7 @@ public final class Workspace {
     private Workspace(Problem problem) {
         this.problem = problem;
         this.points = problem.points();
+        this.loss = problem.loss();
         this.free = problem.free();
         this.parameters = problem.parameters().toArray(new Parameter[0]);
         this.values = problem.start().toArray();
@@ -291,9 +293,18 @@ public final class Workspace {
         return Math.sqrt(sum);
     }
 
+    /** How much a misfit counts now. */
+    Loss loss() {
+        return loss;
+    }
+
+    /** Lets misfits count in another way than the problem says, on the way to its optimum. */
+    void loss(Loss other) {
+        this.loss = other;
+    }
+
     /** What is minimised: the sum of the squared residuals, or of what the loss makes of them. */
     public double cost(double[] residuals) {
-        Loss loss = problem.loss();
         if (loss.plain()) {
             return Sums.products(residuals, 0, residuals, 0, points);
         }
