@@ -21,14 +21,17 @@ final class Reflections {
             }
             double length = matrix[base + k] > 0 ? -Math.sqrt(square) : Math.sqrt(square);
             double head = matrix[base + k] - length;
-            double factor = 1 / (length * head); // −2 / |v|²
+            double scale = Math.sqrt(-1 / (length * head)); // √2 / |v|: the axis v becomes one of length √2
             matrix[base + k] = head;
-            for (int j = k + 1; j < columns; j++) {
-                turn(matrix, j * rows, matrix, base, k, rows, factor);
+            for (int i = k; i < rows; i++) {
+                matrix[base + i] *= scale;
             }
-            turn(right, 0, matrix, base, k, rows, factor);
+            heads[k] = matrix[base + k];
+            for (int j = k + 1; j < columns; j++) {
+                turn(matrix, j * rows + k, matrix, base + k, rows - k);
+            }
+            turn(right, k, matrix, base + k, rows - k);
             matrix[base + k] = length;
-            heads[k] = head;
         }
     }
 
@@ -39,16 +42,20 @@ final class Reflections {
                 int pivot = k * rows + k;
                 double length = matrix[pivot];
                 matrix[pivot] = heads[k];
-                turn(right, 0, matrix, k * rows, k, rows, 1 / (length * heads[k]));
+                turn(right, k, matrix, pivot, rows - k);
                 matrix[pivot] = length;
             }
         }
     }
 
-    private static void turn(double[] column, int at, double[] axis, int base, int from, int to, double factor) {
-        double product = factor * Sums.products(axis, base + from, column, at + from, to - from);
-        for (int i = from; i < to; i++) {
-            column[at + i] += product * axis[base + i];
+    /** Reflects {@code count} numbers of a column from {@code at} on along an axis of length √2. */
+    private static void turn(double[] column, int at, double[] axis, int from, int count) {
+        double product = 0;
+        for (int i = 0; i < count; i++) {
+            product += axis[from + i] * column[at + i];
+        }
+        for (int i = 0; i < count; i++) {
+            column[at + i] -= product * axis[from + i];
         }
     }
 }
