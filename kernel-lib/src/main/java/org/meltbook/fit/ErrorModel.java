@@ -14,7 +14,7 @@ public enum ErrorModel {
      * The deviations are known up to one common factor, which the scatter of the points around the model tells:
      * standard errors are scaled by the residual variance, so a model that does not fit widens its own errors.
      */
-    SCALED("deviations known up to a common factor; standard errors are scaled by the residual variance");
+    SCALED("standard errors are scaled by the residual variance");
 
     private final String words;
 

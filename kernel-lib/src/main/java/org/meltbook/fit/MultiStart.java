@@ -1,6 +1,6 @@
 package org.meltbook.fit;
 
-import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.Comparator;
 import java.util.List;
 import java.util.Random;
@@ -39,40 +39,28 @@ public final class MultiStart {
             throw new RangeException("a fit from many starts needs one at least, asked for " + starts);
         }
         double[][] places = places(problem, starts, seed);
-        double[][] ends = new double[starts][];
-        double[] costs = new double[starts];
-        Fit.Status[] how = new Fit.Status[starts];
-        int[] trials = new int[starts];
-        int cores = Runtime.getRuntime().availableProcessors();
+        Fit[] ends = new Fit[starts];
         Parallel.each(
                 starts,
-                cores,
+                Runtime.getRuntime().availableProcessors(),
                 () -> {
                     Solver solver = Solver.of(problem);
                     return (number, pause) -> {
                         solver.start(places[number]);
-                        if (!solver.usable()) {
-                            return;
+                        if (solver.usable()) {
+                            ends[number] = solver.fit(solver.solve(pause));
                         }
-                        how[number] = solver.solve(pause);
-                        ends[number] = new double[places[number].length];
-                        solver.coordinates(ends[number]);
-                        costs[number] = solver.cost();
-                        trials[number] = solver.evaluations();
                     };
                 },
                 progress,
                 "fits from many starts");
-        List<Fit> fits = new ArrayList<>();
-        for (int k = 0; k < starts; k++) {
-            if (ends[k] != null && Double.isFinite(costs[k])) {
-                fits.add(Fit.at(problem, ends[k], how[k], trials[k]));
-            }
-        }
+        List<Fit> fits = Arrays.stream(ends)
+                .filter(fit -> fit != null && Double.isFinite(fit.cost()))
+                .sorted(Comparator.comparingDouble(Fit::cost))
+                .toList();
         if (fits.isEmpty()) {
             throw new RangeException(problem.name() + " has no finite value at any of the " + starts + " starts");
         }
-        fits.sort(Comparator.comparingDouble(Fit::cost));
         return new MultiStart(fits, starts);
     }
 

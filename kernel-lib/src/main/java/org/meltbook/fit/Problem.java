@@ -117,7 +117,9 @@ public final class Problem {
                 : dataSets.stream()
                         .map(set -> set.name() + ": " + set.weighting().words())
                         .collect(Collectors.joining(", "));
-        return weighting + "; " + errors.words() + (loss.plain() ? "" : "; " + loss.words());
+        boolean given = errors == ErrorModel.SCALED && dataSets.stream().anyMatch(DataSet::sizeKnown);
+        return weighting + (given ? ", taken as known up to a common factor" : "") + "; " + errors.words()
+                + (loss.plain() ? "" : "; " + loss.words());
     }
 
     /** The start, one value a parameter, held and tied ones at their value. */

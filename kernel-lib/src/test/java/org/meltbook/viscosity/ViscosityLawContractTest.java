@@ -83,6 +83,26 @@ class ViscosityLawContractTest {
         }
     }
 
+    @ParameterizedTest
+    @MethodSource("laws")
+    void a_curve_at_once_is_the_curve_rate_by_rate(ViscosityLaw law) {
+        double[] rates = RATES.toArray();
+        double[] constants = law.values().toArray();
+        double[] together = new double[rates.length];
+        double[] derivatives = new double[rates.length * constants.length];
+        law.family().model().curve(rates, constants, together, derivatives);
+        double[] gradient = new double[constants.length];
+        for (int i = 0; i < rates.length; i++) {
+            law.gradient(rates[i], gradient);
+            assertEquals(law.at(rates[i]), together[i], 4e-15 * together[i]);
+            for (int k = 0; k < gradient.length; k++) {
+                // a derivative that is a difference of others loses as many digits as they share
+                double size = Math.abs(gradient[k]) + together[i] / Math.max(constants[k], 1e-3);
+                assertEquals(gradient[k], derivatives[k * rates.length + i], 1e-14 * size);
+            }
+        }
+    }
+
     private static double central(ViscosityLaw law, int i, double rate, double step) {
         return (shifted(law, i, step).at(rate) - shifted(law, i, -step).at(rate)) / (2 * step);
     }
